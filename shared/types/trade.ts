@@ -14,3 +14,21 @@ export type Visibility = typeof VISIBILITIES[number]
 
 export const UNITS = ['inch', 'mm'] as const
 export type Units = typeof UNITS[number]
+
+export const STEP_STATUSES = ['to-do', 'under-way', 'done'] as const
+export type StepStatus = typeof STEP_STATUSES[number]
+
+/** Where a clip stands on its way from the phone to the ribband. */
+export const CLIP_STATES = ['uploading', 'waiting', 'working', 'ready', 'failed'] as const
+export type ClipState = typeof CLIP_STATES[number]
+
+/** How a clip's recorded-at time was found; `hand` is never overwritten by the program. */
+export const RECORDED_AT_SOURCES = ['container', 'name', 'order', 'hand'] as const
+export type RecordedAtSource = typeof RECORDED_AT_SOURCES[number]
+
+/** Background work on a clip; a row per clip and task, which the page reads. */
+export const CLIP_TASKS = ['probe-clip', 'index-footage', 'make-proxy', 'read-captions'] as const
+export type ClipTask = typeof CLIP_TASKS[number]
+
+export const TASK_STATES = ['waiting', 'working', 'done', 'failed'] as const
+export type TaskState = typeof TASK_STATES[number]

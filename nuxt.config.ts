@@ -1,0 +1,69 @@
+export default defineNuxtConfig({
+  compatibilityDate: '2026-11-01',
+  modules: ['@pinia/nuxt', '@nuxtjs/tailwindcss', '@vueuse/nuxt', 'nuxt-auth-utils', 'nuxt-security', '@nuxt/eslint'],
+  devtools: { enabled: false },
+  telemetry: false,
+  css: ['@fontsource-variable/familjen-grotesk/wght.css', '@fontsource-variable/sofia-sans-semi-condensed/wght.css', '~/assets/main.css'],
+  components: [{ path: '~/components', pathPrefix: false }],
+  app: {
+    head: {
+      htmlAttrs: { lang: 'en' },
+      viewport: 'width=device-width, initial-scale=1, viewport-fit=cover',
+      link: [{ rel: 'icon', href: '/icon.svg', type: 'image/svg+xml' }],
+      meta: [
+        { name: 'theme-color', content: '#f5f1e8', media: '(prefers-color-scheme: light)' },
+        { name: 'theme-color', content: '#1c1f20', media: '(prefers-color-scheme: dark)' },
+      ],
+    },
+  },
+  runtimeConfig: {
+    session: { name: 'ribband', maxAge: 60 * 60 * 24 * 30, password: '', cookie: { sameSite: 'lax', httpOnly: true, secure: false } },
+    public: { siteUrl: '' },
+  },
+  experimental: { typedPages: true, payloadExtraction: false },
+  typescript: {
+    strict: true,
+    // Workers, tests and root configs are checked too: they are in tsconfig.tools.json.
+    tsConfig: { compilerOptions: { noUncheckedIndexedAccess: true } },
+  },
+  nitro: {
+    esbuild: { options: { target: 'node20' } },
+    experimental: { asyncContext: false },
+  },
+  security: {
+    strict: false,
+    // Limits are ours, kept in PostgreSQL and shared by every site process.
+    rateLimiter: false,
+    // Bodies are bounded where they are read; a general limiter would buffer uploads.
+    requestSizeLimiter: false,
+    // Writes are guarded by Origin and same-site cookies (server/middleware/origin.ts); user text is never HTML.
+    xssValidator: false,
+    corsHandler: false,
+    headers: {
+      crossOriginEmbedderPolicy: false,
+      crossOriginResourcePolicy: 'same-origin',
+      referrerPolicy: 'strict-origin-when-cross-origin',
+      permissionsPolicy: { camera: [], microphone: [], geolocation: [] },
+      contentSecurityPolicy: {
+        // The storage's address joins img, media and connect when the site starts (server/plugins/security.ts).
+        'default-src': ['\'none\''],
+        'script-src': ['\'self\'', '\'nonce-{{nonce}}\'', '\'strict-dynamic\'', '\'wasm-unsafe-eval\''],
+        'style-src': ['\'self\'', '\'unsafe-inline\''],
+        'img-src': ['\'self\'', 'data:', 'blob:'],
+        'media-src': ['\'self\'', 'blob:'],
+        'font-src': ['\'self\''],
+        'connect-src': ['\'self\''],
+        'manifest-src': ['\'self\''],
+        'worker-src': ['\'self\'', 'blob:'],
+        'base-uri': ['\'none\''],
+        'form-action': ['\'self\''],
+        'frame-ancestors': ['\'none\''],
+        'object-src': ['\'none\''],
+        'script-src-attr': ['\'none\''],
+        'upgrade-insecure-requests': false,
+      },
+    },
+  },
+  eslint: { config: { stylistic: { commaDangle: 'always-multiline', braceStyle: 'stroustrup' } } },
+  tailwindcss: { viewer: false, cssPath: false },
+})

@@ -1,0 +1,21 @@
+import { sql } from 'drizzle-orm'
+import type { Executor } from '../database/client'
+
+/** Jobs and what each is given. One file a job in workers/media/. */
+export interface JobPayloads {
+  'probe-clip': { clipId: string }
+  'index-footage': { clipId: string }
+  'make-proxy': { clipId: string }
+  'read-captions': { trackId: string }
+}
+export type JobName = keyof JobPayloads
+
+/**
+ * Adds a job in the caller's transaction: the row and its job are written together or not at all.
+ * One job per name and subject waits at a time (`job_key`); adding it again moves it to the front.
+ */
+export async function addJob<Name extends JobName>(executor: Executor, name: Name, payload: JobPayloads[Name]): Promise<void> {
+  const key = `${name}:${Object.values(payload)[0]}`
+  await executor.execute(sql`
+    select graphile_worker.add_job(${name}::text, ${JSON.stringify(payload)}::json, job_key := ${key}::text, max_attempts := 6)`)
+}

@@ -1,0 +1,4 @@
+export default apiHandler(async (event) => {
+  await clearUserSession(event)
+  return { signedOut: true }
+})

@@ -1,0 +1,62 @@
+import type { Cue } from '#shared/types/captions'
+import { formatClock } from '#shared/utils/timecode'
+import { WarningList } from './warnings'
+
+/** The database keeps milliseconds in four bytes; more than 24 days is a mistake in any clip. */
+const LAST_STORED_MS = 2_147_483_647
+
+/**
+ * Cues in the order in which a player goes through them, HTML's "text track cue order": by start, of
+ * equal starts the longer first, otherwise as in the file. Returns a new array.
+ */
+export function orderCues(cues: readonly Cue[]): Cue[] {
+  return [...cues].sort((a, b) => a.startMs - b.startMs || b.endMs - a.endMs)
+}
+
+/** Ordered cues whose end is never before their start (such a cue is never on screen) and that the database can hold. */
+export function cuesForStorage(cues: readonly Cue[]): Cue[] {
+  return orderCues(cues).map((cue) => {
+    const startMs = Math.min(cue.startMs, LAST_STORED_MS)
+    return { ...cue, startMs, endMs: Math.min(Math.max(cue.endMs, startMs), LAST_STORED_MS) }
+  })
+}
+
+/** Says where cues are out of order, overlap, or last no time. Cues are taken in file order. */
+export function warnAboutTimes(cues: readonly Cue[], warnings: WarningList): void {
+  const name = (cue: Cue) => `The caption at ${formatClock(cue.startMs, { tenths: true })}`
+  let latest: Cue | undefined
+  for (const [i, cue] of cues.entries()) {
+    const previous = cues[i - 1]
+    if (cue.endMs < cue.startMs) warnings.add(`${name(cue)} ends before it starts, so no player shows it. It was kept.`)
+    else if (cue.endMs === cue.startMs) warnings.add(`${name(cue)} lasts no time, so no player shows it. It was kept.`)
+    if (previous && cue.startMs < previous.startMs) warnings.add(`${name(cue)} comes after a later one in the file. It was put in order by its time.`)
+    else if (latest && cue.startMs < latest.endMs) warnings.add(`${name(cue)} starts before the one at ${formatClock(latest.startMs, { tenths: true })} has ended. Both were kept.`)
+    if (!latest || cue.endMs > latest.endMs) latest = cue
+  }
+}
+
+/** Captions may run over the end by this much: the last words are often held until after the picture. */
+const TAIL_MS = 2000
+
+/**
+ * Compares captions with the clip that they are to belong to.
+ * @param durationMs length of the clip in milliseconds
+ */
+export function checkAgainstClip(cues: readonly Cue[], durationMs: number): string[] {
+  const warnings = new WarningList()
+  const last = cues.reduce((end, cue) => Math.max(end, cue.endMs, cue.startMs), 0)
+  const over = last - durationMs
+  if (cues.length > 0 && over > TAIL_MS) {
+    warnings.add(`The captions run ${spokenLength(over)} longer than the clip: do they belong to another clip?`)
+    const outside = cues.filter(cue => cue.startMs >= durationMs).length
+    if (outside > 0) warnings.add(`${outside === 1 ? '1 caption starts' : `${outside} captions start`} after the end of the clip and will not be seen. ${outside === 1 ? 'It was' : 'They were'} kept.`)
+  }
+  return warnings.toArray()
+}
+
+/** '3 min 10 s', '45 s', '1 h 2 min': whole seconds, at most two units, rounded to the nearest. */
+function spokenLength(ms: number): string {
+  const seconds = Math.max(1, Math.round(ms / 1000))
+  const units: [number, string][] = [[Math.floor(seconds / 3600), 'h'], [Math.floor(seconds / 60) % 60, 'min'], [seconds % 60, 's']]
+  return units.filter(([n]) => n > 0).slice(0, 2).map(([n, unit]) => `${n} ${unit}`).join(' ')
+}

@@ -1,0 +1,33 @@
+import type { H3Event } from 'h3'
+import { z } from 'zod'
+import { DomainError } from '#shared/utils/errors'
+
+/** Checks a value against a schema; what is wrong comes back as field issues that a form can show. */
+export function validate<Schema extends z.ZodType>(schema: Schema, value: unknown): z.output<Schema> {
+  const result = schema.safeParse(value)
+  if (result.success) return result.data
+  const issues = result.error.issues.map(issue => ({ path: issue.path.join('.'), message: issue.message }))
+  throw new DomainError('bad-input', issues.length === 1 ? issues[0]!.message : `${issues.length} entries need mending: ${issues.map(i => i.message).join('; ')}`, { issues })
+}
+
+export async function readBodyAs<Schema extends z.ZodType>(event: H3Event, schema: Schema): Promise<z.output<Schema>> {
+  let body: unknown
+  try {
+    body = await readBody(event)
+  }
+  catch {
+    throw new DomainError('bad-input', 'The request could not be read. Nothing was changed.')
+  }
+  return validate(schema, body ?? {})
+}
+
+export function readQueryAs<Schema extends z.ZodType>(event: H3Event, schema: Schema): z.output<Schema> {
+  return validate(schema, getQuery(event))
+}
+
+/** An id in the address. One that is not an id cannot name anything: the same 404 as for a missing row. */
+export function routeId(event: H3Event, name: string): string {
+  const value = getRouterParam(event, name)
+  if (!z.uuid().safeParse(value).success) throw new DomainError('not-found', `That ${name} was not found. It may have been removed, or you may need to sign in.`)
+  return value!.toLowerCase()
+}
