@@ -21,19 +21,25 @@ export function cuesForStorage(cues: readonly Cue[]): Cue[] {
   })
 }
 
-/** Says where cues are out of order, overlap, or last no time. Cues are taken in file order. */
+/** Says where cues are out of order, last no time or overlap. Cues are taken in file order. */
 export function warnAboutTimes(cues: readonly Cue[], warnings: WarningList): void {
-  const name = (cue: Cue) => `The caption at ${formatClock(cue.startMs, { tenths: true })}`
-  let latest: Cue | undefined
-  for (const [i, cue] of cues.entries()) {
-    const previous = cues[i - 1]
-    if (cue.endMs < cue.startMs) warnings.add(`${name(cue)} ends before it starts, so no player shows it. It was kept.`)
-    else if (cue.endMs === cue.startMs) warnings.add(`${name(cue)} lasts no time, so no player shows it. It was kept.`)
-    if (previous && cue.startMs < previous.startMs) warnings.add(`${name(cue)} comes after a later one in the file. It was put in order by its time.`)
-    else if (latest && cue.startMs < latest.endMs) warnings.add(`${name(cue)} starts before the one at ${formatClock(latest.startMs, { tenths: true })} has ended. Both were kept.`)
-    if (!latest || cue.endMs > latest.endMs) latest = cue
+  let latestStart = 0
+  for (const cue of cues) {
+    if (cue.startMs < latestStart) warnings.add(`${nameOf(cue)} comes after a later one in the file. It was put in order by its time.`)
+    if (cue.endMs < cue.startMs) warnings.add(`${nameOf(cue)} ends before it starts, so no player shows it. It was kept.`)
+    if (cue.endMs === cue.startMs) warnings.add(`${nameOf(cue)} lasts no time, so no player shows it. It was kept.`)
+    latestStart = Math.max(latestStart, cue.startMs)
+  }
+  let showing: Cue | undefined
+  for (const cue of orderCues(cues)) {
+    if (cue.endMs <= cue.startMs) continue
+    if (showing && cue.startMs < showing.endMs) warnings.add(`${nameOf(cue)} starts before the one at ${clock(showing)} has ended. Both were kept.`)
+    if (!showing || cue.endMs > showing.endMs) showing = cue
   }
 }
+
+const clock = (cue: Cue): string => formatClock(cue.startMs, { tenths: true })
+const nameOf = (cue: Cue): string => `The caption at ${clock(cue)}`
 
 /** Captions may run over the end by this much: the last words are often held until after the picture. */
 const TAIL_MS = 2000

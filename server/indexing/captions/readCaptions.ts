@@ -39,7 +39,8 @@ function readAsVtt(text: string, warnings: WarningList): Cue[] {
   const cues = readVtt(text, warnings)
   if (!cues) {
     if (looksBinary(text)) throw unreadable('The file does not hold text.')
-    throw unreadable(`A WebVTT file starts with “WEBVTT” on a line of its own or followed by a space; this one starts with “${excerpt(text)}”.`)
+    const opening = excerpt(text.slice(0, 200).split(/[\r\n]/)[0]!)
+    throw unreadable(`A WebVTT file starts with “WEBVTT” on a line of its own or followed by a space; this one starts with ${opening ? `“${opening}”` : 'an empty line'}.`)
   }
   if (cues.length === 0) warnings.add('The file is WebVTT but holds no caption that can be read.')
   return cues

@@ -65,7 +65,7 @@ function isIndexOf(lines: string[], timeLine: number, previous: Heading | undefi
   const before = lines[timeLine - 2]
   if (before === undefined || before.trim() === '') return true
   // No blank line: believe the number only if it carries on the count.
-  return previous !== undefined && Number(above) === Number(previous.id) + 1
+  return previous !== undefined && Number(above) > Number(previous.id)
 }
 
 function warnPreamble(lines: string[], end: number, warnings: WarningList): void {

@@ -21,7 +21,7 @@ export function parseSrtTimes(line: string): ReadTimes | undefined {
   const start = readClock(left)
   const end = readClock(right)
   if (!start || start.length !== left.trimEnd().length || !end) {
-    const meant = /\d\s*:\s*\d/.test(left) || /^\s*-?\d+\s*:\s*\d/.test(right)
+    const meant = /^\s*-?\d+\s*:/.test(left) || /^\s*-?\d+\s*:\s*\d+\s*:\s*\d/.test(right)
     return meant ? { problem: 'cannot be read, so this caption was left out.' } : undefined
   }
   return judge(start, end)

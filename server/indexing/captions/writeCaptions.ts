@@ -42,9 +42,8 @@ function escapeSrt(text: string): string {
     .replace(/<(?=[/A-Za-z])/g, '&lt;')
     .replaceAll('-->', '--&gt;')
     .replaceAll('{\\', '&#123;\\')
-  // A line of blanks would separate captions, and a bare number at the end would look like the next one's.
+  // A line of blanks alone would separate captions.
   const lines = marked.split('\n').map(line => line !== '' && line.trim() === '' ? `&#${line.charCodeAt(0)};${line.slice(1)}` : line)
-  if (/^\s*\d+\s*$/.test(lines.at(-1)!)) lines.push(lines.pop()!.replace(/\d/, digit => `&#${digit.charCodeAt(0)};`))
   return keepEmptyLines(lines.join('\n'))
 }
 
