@@ -26,6 +26,10 @@ export interface ProbeResult {
     hasEditList: boolean
     /** Median distance of keyframes; null when there is only one. */
     keyframeEveryMs: number | null
+    /** Longest stretch without a keyframe that was seen; missing or null as above. */
+    longestKeyframeGapMs?: number | null
+    /** ffprobe's name of the transfer curve (`bt709`, `smpte2084`, `arib-std-b67` …), when the file states it. */
+    colorTransfer?: string | null
   }
   audio: null | { codec: string, channels: number, sampleRate: number }
   subtitles: { index: number, codec: string, language: string | null }[]
