@@ -24,6 +24,8 @@ export const clips = pgTable('clips', {
   contentType: text('content_type').notNull().default('application/octet-stream'),
   /** SHA-256 over the parts' SHA-256s (part size is a function of file size), hex. Null until uploaded. */
   contentHash: text('content_hash'),
+  /** SHA-256 over the size and samples of the file, hex: recognises the same file after a reload, and likely doubles. */
+  fingerprint: text('fingerprint'),
   state: clipStateEnum('state').notNull().default('uploading'),
   failure: jsonb('failure').$type<ClipFailure>(),
   probe: jsonb('probe').$type<ProbeResult>(),
@@ -44,6 +46,9 @@ export const clips = pgTable('clips', {
   index('clips_session_index').on(table.sessionId, table.offsetMs),
   index('clips_build_index').on(table.buildId),
   uniqueIndex('clips_build_content_unique').on(table.buildId, table.contentHash).where(sql`${table.contentHash} is not null`),
+  index('clips_fingerprint_index').on(table.buildId, table.fingerprint),
+  // Two pages that begin the same file at once get the same upload.
+  uniqueIndex('clips_uploading_unique').on(table.buildId, table.fingerprint).where(sql`${table.state} = 'uploading'`),
   check('clips_duration_positive', sql`coalesce(${table.durationMs}, 0) >= 0`),
 ])
 
@@ -53,12 +58,8 @@ export const uploads = pgTable('uploads', {
   /** The storage's name for the multipart upload. */
   uploadId: text('upload_id').notNull(),
   partSizeBytes: integer('part_size_bytes').notNull(),
-  /** SHA-256 over the size and samples of the file: recognises the same file after a reload. */
-  fingerprint: text('fingerprint').notNull(),
   ...timestamps,
-}, table => [
-  index('uploads_fingerprint_index').on(table.fingerprint),
-])
+})
 
 /** Progress of one task on one clip, read by the page. */
 export const clipTasks = pgTable('clip_tasks', {
