@@ -26,7 +26,10 @@ export interface Storage {
   abortUpload(key: string, uploadId: string): Promise<void>
   /** A URL at the public endpoint for one PUT of one part. */
   presignPart(key: string, uploadId: string, partNumber: number, expiresInSeconds: number): Promise<string>
-  /** A GET URL whose time is rounded down so that one object keeps one URL for a while (browser cache). */
-  presignGet(key: string, options?: { expiresInSeconds?: number, contentType?: string, downloadName?: string }): Promise<string>
+  /**
+   * A GET URL whose time is rounded down so that one object keeps one URL for a while (browser cache).
+   * Valid at least `expiresInSeconds` (12 hours). Browsers may keep the bytes for `cacheSeconds` (one hour; 0 for never).
+   */
+  presignGet(key: string, options?: { expiresInSeconds?: number, contentType?: string, downloadName?: string, cacheSeconds?: number }): Promise<string>
   ping(): Promise<void>
 }
