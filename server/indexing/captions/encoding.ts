@@ -80,11 +80,20 @@ function decodeEightBit(bytes: Uint8Array): DecodedText {
       }
     }
     return {
-      text: new TextDecoder('windows-1252').decode(bytes),
+      text: decodeWindows1252(bytes),
       encoding: 'windows-1252',
       warning: 'The file is not UTF-8, so it was read as Windows-1252. If letters look wrong, save it as UTF-8 and add it again.',
     }
   }
+}
+
+/** 0x80 to 0x9F in Windows-1252; everything else is as in Latin-1 (https://encoding.spec.whatwg.org/index-windows-1252.txt). */
+const WINDOWS_1252_HIGH = '€\u0081‚ƒ„…†‡ˆ‰Š‹Œ\u008DŽ\u008F\u0090‘’“”•–—˜™š›œ\u009DžŸ'
+
+function decodeWindows1252(bytes: Uint8Array): string {
+  // Node 20's own decoder of that name decodes Latin-1 and loses quotes and dashes.
+  return Buffer.from(bytes.buffer, bytes.byteOffset, bytes.byteLength).toString('latin1')
+    .replace(/[\u0080-\u009F]/g, control => WINDOWS_1252_HIGH[control.charCodeAt(0) - 0x80]!)
 }
 
 /** Counts well-formed multi-byte UTF-8 sequences against bytes that fit none (overlong forms are not told apart: this only weighs). */

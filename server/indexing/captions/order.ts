@@ -25,15 +25,15 @@ export function cuesForStorage(cues: readonly Cue[]): Cue[] {
 export function warnAboutTimes(cues: readonly Cue[], warnings: WarningList): void {
   let latestStart = 0
   for (const cue of cues) {
-    if (cue.startMs < latestStart) warnings.add(`${nameOf(cue)} comes after a later one in the file. It was put in order by its time.`)
-    if (cue.endMs < cue.startMs) warnings.add(`${nameOf(cue)} ends before it starts, so no player shows it. It was kept.`)
-    if (cue.endMs === cue.startMs) warnings.add(`${nameOf(cue)} lasts no time, so no player shows it. It was kept.`)
+    if (cue.startMs < latestStart) warnings.add(() => `${nameOf(cue)} comes after a later one in the file. It was put in order by its time.`)
+    if (cue.endMs < cue.startMs) warnings.add(() => `${nameOf(cue)} ends before it starts, so no player shows it. It was kept.`)
+    if (cue.endMs === cue.startMs) warnings.add(() => `${nameOf(cue)} lasts no time, so no player shows it. It was kept.`)
     latestStart = Math.max(latestStart, cue.startMs)
   }
   let showing: Cue | undefined
   for (const cue of orderCues(cues)) {
     if (cue.endMs <= cue.startMs) continue
-    if (showing && cue.startMs < showing.endMs) warnings.add(`${nameOf(cue)} starts before the one at ${clock(showing)} has ended. Both were kept.`)
+    if (showing && cue.startMs < showing.endMs) warnings.add(() => `${nameOf(cue)} starts before the one at ${clock(showing)} has ended. Both were kept.`)
     if (!showing || cue.endMs > showing.endMs) showing = cue
   }
 }
@@ -53,9 +53,9 @@ export function checkAgainstClip(cues: readonly Cue[], durationMs: number): stri
   const last = cues.reduce((end, cue) => Math.max(end, cue.endMs, cue.startMs), 0)
   const over = last - durationMs
   if (cues.length > 0 && over > TAIL_MS) {
-    warnings.add(`The captions run ${spokenLength(over)} longer than the clip: do they belong to another clip?`)
+    warnings.add(() => `The captions run ${spokenLength(over)} longer than the clip: do they belong to another clip?`)
     const outside = cues.filter(cue => cue.startMs >= durationMs).length
-    if (outside > 0) warnings.add(`${outside === 1 ? '1 caption starts' : `${outside} captions start`} after the end of the clip and will not be seen. ${outside === 1 ? 'It was' : 'They were'} kept.`)
+    if (outside > 0) warnings.add(() => `${outside === 1 ? '1 caption starts' : `${outside} captions start`} after the end of the clip and will not be seen. ${outside === 1 ? 'It was' : 'They were'} kept.`)
   }
   return warnings.toArray()
 }

@@ -27,7 +27,7 @@ export function readCaptions(bytes: Uint8Array, options: { name?: string } = {})
   const { text, encoding, warning } = decodeCaptionBytes(bytes)
   if (text.trim() === '') throw unreadable('The file is empty.')
   const warnings = new WarningList()
-  if (warning) warnings.add(warning)
+  if (warning) warnings.add(() => warning)
 
   const format = tellFormat(text, options.name)
   const cues = format === 'vtt' ? readAsVtt(text, warnings) : readAsSrt(text, warnings)
@@ -42,7 +42,7 @@ function readAsVtt(text: string, warnings: WarningList): Cue[] {
     const opening = excerpt(text.slice(0, 200).split(/[\r\n]/)[0]!)
     throw unreadable(`A WebVTT file starts with “WEBVTT” on a line of its own or followed by a space; this one starts with ${opening ? `“${opening}”` : 'an empty line'}.`)
   }
-  if (cues.length === 0) warnings.add('The file is WebVTT but holds no caption that can be read.')
+  if (cues.length === 0) warnings.add(() => 'The file is WebVTT but holds no caption that can be read.')
   return cues
 }
 

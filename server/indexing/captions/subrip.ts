@@ -46,7 +46,7 @@ function findHeadings(lines: string[], warnings: WarningList): Heading[] {
     if (!read) return
     const previous = headings.at(-1)
     const hasId = isIndexOf(lines, index, previous)
-    if (read.problem) warnings.add(`Line ${index + 1}: the times “${excerpt(line)}” ${read.problem}`)
+    if (read.problem) warnings.add(() => `Line ${index + 1}: the times “${excerpt(line)}” ${read.problem}`)
     headings.push({
       id: hasId ? lines[index - 1]!.trim() : '',
       firstLine: hasId ? index - 1 : index,
@@ -70,7 +70,7 @@ function isIndexOf(lines: string[], timeLine: number, previous: Heading | undefi
 
 function warnPreamble(lines: string[], end: number, warnings: WarningList): void {
   const first = lines.slice(0, end).findIndex(line => line.trim() !== '')
-  if (first >= 0) warnings.add(`Line ${first + 1}: “${excerpt(lines[first]!)}” comes before the first times, so it was left out.`)
+  if (first >= 0) warnings.add(() => `Line ${first + 1}: “${excerpt(lines[first]!)}” comes before the first times, so it was left out.`)
 }
 
 function collectText(lines: string[], from: number, end: number, warnings: WarningList): string {
@@ -83,13 +83,13 @@ function collectText(lines: string[], from: number, end: number, warnings: Warni
       afterBlank = kept.length > 0
       continue
     }
-    if (afterBlank) warnings.add(`Line ${i + 1}: “${excerpt(line)}” stands after a blank line without times of its own; it was kept with the caption above.`)
+    if (afterBlank) warnings.add(() => `Line ${i + 1}: “${excerpt(line)}” stands after a blank line without times of its own; it was kept with the caption above.`)
     afterBlank = false
     const plain = plainSrtLine(line)
     foreign ??= plain.foreignTag
     kept.push(plain.text)
   }
-  if (foreign) warnings.add(`Line ${from + 1}: “${excerpt(foreign)}” is not caption markup and was removed; the words around it were kept.`)
+  if (foreign) warnings.add(() => `Line ${from + 1}: “${excerpt(foreign)}” is not caption markup and was removed; the words around it were kept.`)
   return kept.join('\n')
 }
 

@@ -6,8 +6,9 @@ export class WarningList {
   private readonly listed: string[] = []
   private uncounted = 0
 
-  add(message: string): void {
-    if (this.listed.length < MAX_CAPTION_WARNINGS) this.listed.push(message)
+  /** Takes a function, so that the words are made only for warnings that are listed. */
+  add(message: () => string): void {
+    if (this.listed.length < MAX_CAPTION_WARNINGS) this.listed.push(message())
     else this.uncounted++
   }
 

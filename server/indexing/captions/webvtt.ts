@@ -80,22 +80,22 @@ function collectBlock(reader: BlockReader, inHeader: boolean): Cue | undefined {
   const plain = plainCueText(buffer.join('\n'))
   cue.text = plain.text
   if (plain.foreignTag) {
-    reader.warnings.add(`Line ${arrowLine + 2}: “${excerpt(plain.foreignTag)}” is not caption markup and was removed; the words around it were kept.`)
+    reader.warnings.add(() => `Line ${arrowLine + 2}: “${excerpt(plain.foreignTag)}” is not caption markup and was removed; the words around it were kept.`)
   }
   return cue
 }
 
 function warnUnreadableTime(warnings: WarningList, index: number, line: string): void {
   const hint = /\d,\d{3}/.test(line.slice(0, 60)) ? ' (WebVTT wants a full stop before the milliseconds, not a comma)' : ''
-  warnings.add(`Line ${index + 1}: the times “${excerpt(line)}” cannot be read${hint}, so this caption was left out.`)
+  warnings.add(() => `Line ${index + 1}: the times “${excerpt(line)}” cannot be read${hint}, so this caption was left out.`)
 }
 
 function warnNoBlankLine(warnings: WarningList, index: number): void {
-  warnings.add(`Line ${index + 1}: no blank line comes before this caption, so the line above it was read as text of the caption before.`)
+  warnings.add(() => `Line ${index + 1}: no blank line comes before this caption, so the line above it was read as text of the caption before.`)
 }
 
 function warnNoTime(warnings: WarningList, index: number, buffer: string[]): void {
-  warnings.add(`Line ${index + 1}: “${excerpt(buffer[0] ?? '')}” has no times, so it was left out.`)
+  warnings.add(() => `Line ${index + 1}: “${excerpt(buffer[0] ?? '')}” has no times, so it was left out.`)
 }
 
 /** "Collect WebVTT cue timings and settings", without the settings. */
