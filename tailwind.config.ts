@@ -24,6 +24,7 @@ export default {
       figures: ['"Sofia Sans Semi Condensed Variable"', '"Familjen Grotesk Variable"', 'sans-serif'],
     },
     extend: {
+      screens: { coarse: { raw: '(pointer: coarse)' } },
       borderRadius: { DEFAULT: '2px', plank: '1px 5px 1px 5px' },
       minHeight: { touch: '2.75rem' },
       minWidth: { touch: '2.75rem' },
