@@ -33,8 +33,9 @@ export function warnAboutTimes(cues: readonly Cue[], warnings: WarningList): voi
   let showing: Cue | undefined
   for (const cue of orderCues(cues)) {
     if (cue.endMs <= cue.startMs) continue
-    if (showing && cue.startMs < showing.endMs) warnings.add(() => `${nameOf(cue)} starts before the one at ${clock(showing)} has ended. Both were kept.`)
-    if (!showing || cue.endMs > showing.endMs) showing = cue
+    const before = showing
+    if (before && cue.startMs < before.endMs) warnings.add(() => `${nameOf(cue)} starts before the one at ${clock(before)} has ended. Both were kept.`)
+    if (!before || cue.endMs > before.endMs) showing = cue
   }
 }
 

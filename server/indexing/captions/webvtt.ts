@@ -77,10 +77,10 @@ function collectBlock(reader: BlockReader, inHeader: boolean): Cue | undefined {
     if (!inHeader && arrowLine < 0 && !NAMED_BLOCK.test(buffer[0] ?? '')) warnNoTime(reader.warnings, first, buffer)
     return undefined
   }
-  const plain = plainCueText(buffer.join('\n'))
-  cue.text = plain.text
-  if (plain.foreignTag) {
-    reader.warnings.add(() => `Line ${arrowLine + 2}: “${excerpt(plain.foreignTag)}” is not caption markup and was removed; the words around it were kept.`)
+  const { text, foreignTag } = plainCueText(buffer.join('\n'))
+  cue.text = text
+  if (foreignTag) {
+    reader.warnings.add(() => `Line ${arrowLine + 2}: “${excerpt(foreignTag)}” is not caption markup and was removed; the words around it were kept.`)
   }
   return cue
 }
