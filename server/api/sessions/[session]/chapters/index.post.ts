@@ -1,0 +1,11 @@
+import { requireBuild } from '#server/services/access'
+import { changeChapters } from '#server/services/chapters'
+import { chapterChangesSchema } from '#shared/schemas/chapters'
+
+export default apiHandler(async (event) => {
+  const sessionId = routeId(event, 'session')
+  const account = await requireAccount(event)
+  await requireBuild(db(), account.id, 'session', sessionId, 'work')
+  const changes = await readBodyAs(event, chapterChangesSchema)
+  return changeChapters(db(), sessionId, account.id, changes)
+})

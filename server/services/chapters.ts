@@ -1,0 +1,135 @@
+import { and, eq, inArray, sql } from 'drizzle-orm'
+import type { ChapterChanges, ChapterPut } from '#shared/schemas/chapters'
+import type { ChapterView } from '#shared/types/session'
+import { DomainError, notFound } from '#shared/utils/errors'
+import type { Database, Executor, Transaction } from '../database/client'
+import { chapterParts, chapters, clips, parts, sessions, steps, users } from '../database/schema'
+import { announce } from './live'
+import { refreshPassages } from './search/passages'
+
+/** What one set of changes came to. */
+export interface ChapterOutcome { chapters: ChapterView[], removed: string[] }
+
+/** Chapters of a session in clip and time order. */
+export async function listChapters(executor: Executor, where: { sessionId: string } | { ids: string[] }): Promise<ChapterView[]> {
+  const rows = await executor
+    .select({
+      id: chapters.id, clipId: chapters.clipId, startMs: chapters.startMs, endMs: chapters.endMs, stepId: chapters.stepId, operation: chapters.operation,
+      partIds: sql<string[]>`coalesce((select array_agg(${chapterParts.partId} order by ${chapterParts.partId}) from ${chapterParts} where ${chapterParts.chapterId} = ${chapters.id}), '{}')`,
+      inking: chapters.inking, confidence: chapters.confidence, evidence: chapters.evidence, note: chapters.note, version: chapters.version, updatedBy: users.name,
+    })
+    .from(chapters)
+    .leftJoin(users, eq(users.id, chapters.updatedBy))
+    .where('sessionId' in where ? eq(chapters.sessionId, where.sessionId) : inArray(chapters.id, where.ids))
+    .orderBy(chapters.clipId, chapters.startMs)
+  return rows
+}
+
+/**
+ * Applies everything that one action changes, whole or not at all. Nobody's work is overwritten unseen:
+ * each change names the version it was made from.
+ *
+ * @throws DomainError `conflict` with `data.reason`: `changed` (somebody was quicker; `current` holds the chapters
+ *   as they now are, `gone` the ids that are no more) or `overlap` (`with` holds the chapters in the way).
+ */
+export async function changeChapters(database: Database, sessionId: string, userId: string, changes: ChapterChanges): Promise<ChapterOutcome> {
+  try {
+    return await database.transaction(tx => applyChanges(tx, sessionId, userId, changes))
+  }
+  catch (error) {
+    if (isOverlap(error)) throw await overlapConflict(database, changes.put)
+    throw error
+  }
+}
+
+async function applyChanges(tx: Transaction, sessionId: string, userId: string, changes: ChapterChanges): Promise<ChapterOutcome> {
+  const [session] = await tx.select({ buildId: sessions.buildId }).from(sessions).where(eq(sessions.id, sessionId))
+  if (!session) throw notFound('That session')
+  await checkReferences(tx, sessionId, session.buildId, changes.put)
+  // Neighbours exchange their edge in one go: whether they overlap is asked at the end.
+  await tx.execute(sql`set constraints chapters_never_overlap deferred`)
+
+  const touched = new Set<string>()
+  const stale: string[] = []
+  for (const { id, version } of changes.remove) {
+    const [gone] = await tx.delete(chapters).where(and(eq(chapters.id, id), eq(chapters.sessionId, sessionId), eq(chapters.version, version))).returning({ clipId: chapters.clipId })
+    if (gone) touched.add(gone.clipId)
+    else stale.push(id)
+  }
+  for (const put of changes.put) {
+    const clipsTouched = await writeChapter(tx, { sessionId, buildId: session.buildId, userId }, put)
+    if (!clipsTouched) stale.push(put.id)
+    for (const clip of clipsTouched ?? []) touched.add(clip)
+  }
+  if (stale.length) {
+    const current = (await listChapters(tx, { ids: stale })).filter(one => stale.includes(one.id))
+    throw new DomainError('conflict', changedMessage(current), { reason: 'changed', current, gone: stale.filter(id => !current.some(one => one.id === id)) })
+  }
+  await tx.execute(sql`set constraints chapters_never_overlap immediate`)
+
+  for (const clipId of touched) await refreshPassages(tx, clipId)
+  for (const one of [...changes.put, ...changes.remove]) await announce(tx, { sessionId, kind: 'chapter', id: one.id, by: userId })
+  return { chapters: changes.put.length ? await listChapters(tx, { ids: changes.put.map(put => put.id) }) : [], removed: changes.remove.map(one => one.id) }
+}
+
+/** Writes one chapter; returns the clips it touched, or null when its version is no longer the newest. */
+async function writeChapter(tx: Transaction, context: { sessionId: string, buildId: string, userId: string }, put: ChapterPut): Promise<string[] | null> {
+  const { id, version, partIds, ...fields } = put
+  const values = { ...fields, confidence: put.inking === 'inked' ? null : put.confidence, updatedBy: context.userId }
+  let before: string | undefined
+  if (version === null) {
+    const [row] = await tx.insert(chapters).values({ id, ...values, sessionId: context.sessionId, buildId: context.buildId, createdBy: context.userId }).onConflictDoNothing({ target: chapters.id }).returning({ id: chapters.id })
+    if (!row) return null
+  }
+  else {
+    const [old] = await tx.select({ clipId: chapters.clipId }).from(chapters).where(and(eq(chapters.id, id), eq(chapters.sessionId, context.sessionId), eq(chapters.version, version))).for('update')
+    if (!old) return null
+    before = old.clipId
+    await tx.update(chapters).set({ ...values, version: version + 1 }).where(eq(chapters.id, id))
+    await tx.delete(chapterParts).where(eq(chapterParts.chapterId, id))
+  }
+  if (partIds.length) await tx.insert(chapterParts).values([...new Set(partIds)].map(partId => ({ chapterId: id, partId })))
+  return [put.clipId, ...(before ? [before] : [])]
+}
+
+/** Clips, steps and parts must be of this very session and build, and times within the clip. */
+async function checkReferences(tx: Transaction, sessionId: string, buildId: string, puts: ChapterPut[]): Promise<void> {
+  const wanted = { clips: [...new Set(puts.map(put => put.clipId))], steps: [...new Set(puts.flatMap(put => put.stepId ?? []))], parts: [...new Set(puts.flatMap(put => put.partIds))] }
+  const [clipRows, stepRows, partRows] = await Promise.all([
+    wanted.clips.length ? tx.select({ id: clips.id, durationMs: clips.durationMs, name: clips.name }).from(clips).where(and(inArray(clips.id, wanted.clips), eq(clips.sessionId, sessionId))) : [],
+    wanted.steps.length ? tx.select({ id: steps.id }).from(steps).where(and(inArray(steps.id, wanted.steps), eq(steps.buildId, buildId))) : [],
+    wanted.parts.length ? tx.select({ id: parts.id }).from(parts).where(and(inArray(parts.id, wanted.parts), eq(parts.buildId, buildId))) : [],
+  ])
+  if (clipRows.length < wanted.clips.length) throw new DomainError('bad-input', 'That clip is not in this session. Nothing was changed.')
+  if (stepRows.length < wanted.steps.length) throw new DomainError('bad-input', 'That step is not in this build\'s plan. Nothing was changed.')
+  if (partRows.length < wanted.parts.length) throw new DomainError('bad-input', 'That part is not in this build. Nothing was changed.')
+  for (const put of puts) {
+    const clip = clipRows.find(row => row.id === put.clipId)!
+    if (clip.durationMs !== null && put.endMs > clip.durationMs) throw new DomainError('bad-input', `The out point lies beyond the end of ${clip.name}. Nothing was changed.`, { issues: [{ path: 'endMs', message: 'Beyond the end of the clip' }] })
+  }
+}
+
+function changedMessage(current: ChapterView[]): string {
+  const who = current.find(one => one.updatedBy)?.updatedBy
+  if (!current.length) return 'Somebody has deleted this chapter in the meantime. Your change was not saved; you can mark it again.'
+  return `${who ?? 'Somebody'} changed this chapter in the meantime. Your change was not saved: keep theirs, or put yours over it.`
+}
+
+function isOverlap(error: unknown): boolean {
+  for (let cause = error as { constraint?: string, cause?: unknown } | undefined; cause; cause = cause.cause as typeof cause) {
+    if (cause.constraint === 'chapters_never_overlap') return true
+  }
+  return false
+}
+
+async function overlapConflict(executor: Executor, puts: ChapterPut[]): Promise<DomainError> {
+  const named = new Set(puts.map(put => put.id))
+  const ids: string[] = []
+  for (const put of puts) {
+    const rows = await executor.select({ id: chapters.id }).from(chapters)
+      .where(and(eq(chapters.clipId, put.clipId), sql`int4range(${chapters.startMs}, ${chapters.endMs}) && int4range(${put.startMs}, ${put.endMs})`))
+    ids.push(...rows.map(row => row.id).filter(id => !named.has(id)))
+  }
+  const inTheWay = ids.length ? await listChapters(executor, { ids }) : []
+  return new DomainError('conflict', 'This stretch is already taken by another chapter. Nothing was changed: shorten one of the two, or let the new one take the place.', { reason: 'overlap', with: inTheWay })
+}

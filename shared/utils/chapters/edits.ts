@@ -1,0 +1,138 @@
+import type { ChapterPut } from '#shared/schemas/chapters'
+import type { ChapterView } from '#shared/types/session'
+
+/**
+ * Every edit of chapters as plain data: what is put, what is removed. Pure, so that the page can show the result
+ * at once, the server apply it whole, and undo be another edit. All times are integer ms of the clip, half open.
+ */
+export interface Edit {
+  /** For the undo button: "Split step 7, glue". */
+  label: string
+  put: ChapterPut[]
+  remove: ChapterView[]
+}
+
+/** The shortest chapter that an edit may leave, ms: shorter ones cannot be seen or clicked. */
+export const SHORTEST_CHAPTER_MS = 200
+
+export type Tag = Pick<ChapterPut, 'stepId' | 'operation' | 'partIds'>
+
+export function asPut(view: ChapterView, changes: Partial<ChapterPut> = {}): ChapterPut {
+  const { updatedBy: _, ...rest } = view
+  return { ...rest, ...changes }
+}
+
+/** A change by hand makes a chapter inked. */
+const inked = { inking: 'inked', confidence: null } as const
+
+/**
+ * Marks [startMs, endMs) of a clip as a new inked chapter. What was there gives way: chapters wholly inside go,
+ * others are cut back, one that stands round it is parted in two.
+ */
+export function mark(chapters: ChapterView[], clipId: string, startMs: number, endMs: number, tag: Tag, newId: () => string, note = ''): Edit {
+  const { put, remove } = makeRoom(chapters, clipId, startMs, endMs, newId)
+  return { label: 'Mark chapter', put: [...put, { id: newId(), clipId, startMs, endMs, ...tag, ...inked, evidence: [], note, version: null }], remove }
+}
+
+/** The inked chapters that marking [startMs, endMs) would cut: worth a question before it happens. */
+export function inkedInTheWay(chapters: ChapterView[], clipId: string, startMs: number, endMs: number): ChapterView[] {
+  return chapters.filter(one => one.clipId === clipId && one.inking === 'inked' && one.startMs < endMs && one.endMs > startMs)
+}
+
+function makeRoom(chapters: ChapterView[], clipId: string, startMs: number, endMs: number, newId: () => string): { put: ChapterPut[], remove: ChapterView[] } {
+  const put: ChapterPut[] = []
+  const remove: ChapterView[] = []
+  for (const one of chapters) {
+    if (one.clipId !== clipId || one.startMs >= endMs || one.endMs <= startMs) continue
+    const before = startMs - one.startMs >= SHORTEST_CHAPTER_MS
+    const after = one.endMs - endMs >= SHORTEST_CHAPTER_MS
+    if (before) put.push(asPut(one, { endMs: startMs }))
+    if (after) put.push(before ? asPut(one, { id: newId(), startMs: endMs, version: null }) : asPut(one, { startMs: endMs }))
+    if (!before && !after) remove.push(one)
+  }
+  return { put, remove }
+}
+
+/** Other step, operation or parts; inks it. */
+export function retag(chapter: ChapterView, tag: Partial<Tag> & { note?: string }): Edit {
+  const operation = tag.operation ?? chapter.operation
+  const stepId = operation === 'none' ? null : tag.stepId === undefined ? chapter.stepId : tag.stepId
+  return { label: 'Change chapter', put: [asPut(chapter, { ...tag, operation, stepId, ...inked })], remove: [] }
+}
+
+export function ink(chapters: ChapterView[]): Edit {
+  return { label: chapters.length === 1 ? 'Ink chapter' : `Ink ${chapters.length} chapters`, put: chapters.map(one => asPut(one, inked)), remove: [] }
+}
+
+/** Parts a chapter in two at atMs; null when either side would be too short. */
+export function split(chapter: ChapterView, atMs: number, newId: () => string): Edit | null {
+  if (atMs - chapter.startMs < SHORTEST_CHAPTER_MS || chapter.endMs - atMs < SHORTEST_CHAPTER_MS) return null
+  return { label: 'Split chapter', put: [asPut(chapter, { endMs: atMs }), asPut(chapter, { id: newId(), startMs: atMs, version: null })], remove: [] }
+}
+
+/** Joins a chapter with the next one of its clip (bridging a gap between them), keeping the first one's step and operation. */
+export function join(chapters: ChapterView[], chapter: ChapterView): Edit | null {
+  const next = nextOf(chapters, chapter)
+  if (!next) return null
+  const notes = [chapter.note, next.note].filter(Boolean).join('\n')
+  return { label: 'Join chapters', put: [asPut(chapter, { endMs: next.endMs, partIds: [...new Set([...chapter.partIds, ...next.partIds])], note: notes, ...inked })], remove: [next] }
+}
+
+export function remove(chapter: ChapterView): Edit {
+  return { label: 'Delete chapter', put: [], remove: [chapter] }
+}
+
+/**
+ * Moves one edge. A neighbour that touches moves with it (the butt stays closed); one further off is only
+ * pushed when reached, and never to less than the shortest chapter: the edge stops there.
+ */
+export function moveEdge(chapters: ChapterView[], chapter: ChapterView, edge: 'start' | 'end', toMs: number, clipEndMs: number): Edit | null {
+  const neighbour = edge === 'start' ? previousOf(chapters, chapter) : nextOf(chapters, chapter)
+  const touches = neighbour && (edge === 'start' ? neighbour.endMs === chapter.startMs : neighbour.startMs === chapter.endMs)
+  const low = edge === 'start' ? (neighbour ? neighbour.startMs + SHORTEST_CHAPTER_MS : 0) : chapter.startMs + SHORTEST_CHAPTER_MS
+  const high = edge === 'start' ? chapter.endMs - SHORTEST_CHAPTER_MS : (neighbour ? neighbour.endMs - SHORTEST_CHAPTER_MS : clipEndMs)
+  const ms = Math.round(Math.min(high, Math.max(low, toMs)))
+  if (low > high || ms === (edge === 'start' ? chapter.startMs : chapter.endMs)) return null
+  const put = [asPut(chapter, edge === 'start' ? { startMs: ms, ...inked } : { endMs: ms, ...inked })]
+  if (neighbour && edge === 'start' && (touches || neighbour.endMs > ms)) put.push(asPut(neighbour, { endMs: ms }))
+  if (neighbour && edge === 'end' && (touches || neighbour.startMs < ms)) put.push(asPut(neighbour, { startMs: ms }))
+  return { label: 'Move edge', put, remove: [] }
+}
+
+export function nextOf(chapters: ChapterView[], chapter: ChapterView): ChapterView | undefined {
+  return chapters.filter(one => one.clipId === chapter.clipId && one.startMs >= chapter.endMs).sort((a, b) => a.startMs - b.startMs)[0]
+}
+
+export function previousOf(chapters: ChapterView[], chapter: ChapterView): ChapterView | undefined {
+  return chapters.filter(one => one.clipId === chapter.clipId && one.endMs <= chapter.startMs).sort((a, b) => b.endMs - a.endMs)[0]
+}
+
+/** Chapters after an edit, as the page shows them before the server has answered. */
+export function apply(chapters: ChapterView[], edit: Pick<Edit, 'put' | 'remove'>): ChapterView[] {
+  const gone = new Set(edit.remove.map(one => one.id))
+  const put = new Map(edit.put.map(one => [one.id, one]))
+  const kept = chapters.filter(one => !gone.has(one.id)).map((one) => {
+    const next = put.get(one.id)
+    put.delete(one.id)
+    return next ? { ...one, ...next, version: one.version } : one
+  })
+  const fresh = [...put.values()].map(one => ({ ...one, version: one.version ?? 0, updatedBy: null }))
+  return [...kept, ...fresh].sort((a, b) => a.clipId.localeCompare(b.clipId) || a.startMs - b.startMs)
+}
+
+/**
+ * The edit that takes `edit` back, given the chapters before it and as they are now (for their versions).
+ * Null when somebody has since changed one of them: undoing would overwrite their work.
+ */
+export function inverse(edit: Edit, before: ChapterView[], now: ChapterView[], versionsAfter: Map<string, number>): Edit | null {
+  const put: ChapterPut[] = edit.remove.map(one => asPut(one, { version: null }))
+  const remove: ChapterView[] = []
+  for (const changed of edit.put) {
+    const current = now.find(one => one.id === changed.id)
+    if (!current || current.version !== versionsAfter.get(changed.id)) return null
+    const old = before.find(one => one.id === changed.id)
+    if (old) put.push(asPut(old, { version: current.version }))
+    else remove.push(current)
+  }
+  return { label: edit.label, put, remove }
+}
