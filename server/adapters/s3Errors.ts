@@ -40,7 +40,8 @@ export function storageError(error: unknown): unknown {
 export async function withStorage<T>(work: () => Promise<T>): Promise<T> {
   try {
     return await work()
-  } catch (error) {
+  }
+  catch (error) {
     throw storageError(error)
   }
 }

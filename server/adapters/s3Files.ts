@@ -1,6 +1,6 @@
 import { createWriteStream } from 'node:fs'
 import { open, rm, stat, type FileHandle } from 'node:fs/promises'
-import { Readable } from 'node:stream'
+import type { Readable } from 'node:stream'
 import { pipeline } from 'node:stream/promises'
 import {
   AbortMultipartUploadCommand, CompleteMultipartUploadCommand, CreateMultipartUploadCommand, GetObjectCommand,
@@ -41,11 +41,13 @@ export async function writeFile(transfer: Transfer & { contentType: string }): P
     try {
       const Parts = await sendParts(transfer, handle, size, UploadId!)
       await client.send(new CompleteMultipartUploadCommand({ Bucket, Key, UploadId, MultipartUpload: { Parts } }), { abortSignal })
-    } catch (error) {
+    }
+    catch (error) {
       await client.send(new AbortMultipartUploadCommand({ Bucket, Key, UploadId })).catch(() => undefined)
       throw error
     }
-  } finally {
+  }
+  finally {
     await handle.close()
   }
 }
@@ -68,7 +70,8 @@ async function sendParts(transfer: Transfer, handle: FileHandle, size: number, U
   const senders = Array.from({ length: IN_FLIGHT }, sender)
   try {
     await Promise.all(senders)
-  } catch (error) {
+  }
+  catch (error) {
     // The other sender still uses the file: let it come to its end before the file is closed.
     next = count + 1
     await Promise.allSettled(senders)
@@ -89,7 +92,8 @@ export async function fetchToFile(transfer: Transfer): Promise<void> {
       etag = ETag
       await pipeline(Body as Readable, createWriteStream(path, { flags: have ? 'a' : 'w' }), { signal: abortSignal })
       return
-    } catch (error) {
+    }
+    catch (error) {
       if (isMissing(error)) throw notFound('The stored file')
       const changed = (error as Error).name === 'PreconditionFailed'
       const complete = (error as Error).name === 'InvalidRange' && have > 0

@@ -62,7 +62,8 @@ export function createS3Storage(config: S3StorageConfig): Storage & { close(): v
     try {
       await client.send(new HeadBucketCommand({ Bucket }))
       return true
-    } catch (error) {
+    }
+    catch (error) {
       if (isMissing(error)) return false
       throw error
     }
@@ -72,7 +73,8 @@ export function createS3Storage(config: S3StorageConfig): Storage & { close(): v
     try {
       const found = await client.send(new HeadObjectCommand({ Bucket, Key: key }))
       return { sizeBytes: found.ContentLength ?? 0, etag: bareEtag(found.ETag), contentType: found.ContentType ?? null, lastModified: found.LastModified ?? new Date(0) }
-    } catch (error) {
+    }
+    catch (error) {
       if (isMissing(error)) return null
       throw storageError(error)
     }
@@ -83,13 +85,14 @@ export function createS3Storage(config: S3StorageConfig): Storage & { close(): v
     try {
       const { Body } = await client.send(new GetObjectCommand({ Bucket, Key: key, Range }))
       return Body as NodeJS.ReadableStream & { transformToByteArray(): Promise<Uint8Array> }
-    } catch (error) {
+    }
+    catch (error) {
       throw isMissing(error) ? notFound('The stored file') : storageError(error)
     }
   }
 
   return {
-    ensureBucket: (origins) => withStorage(async () => {
+    ensureBucket: origins => withStorage(async () => {
       const LocationConstraint = config.region as BucketLocationConstraint
       if (!await bucketExists()) {
         await client.send(new CreateBucketCommand({ Bucket, ...(config.region === 'us-east-1' ? {} : { CreateBucketConfiguration: { LocationConstraint } }) }))
@@ -112,9 +115,9 @@ export function createS3Storage(config: S3StorageConfig): Storage & { close(): v
     writeFile: (key, path, contentType, signal) => withStorage(() => writeFile({ client, bucket: Bucket, key, path, contentType, signal })),
     fetchToFile: (key, path, signal) => fetchToFile({ client, bucket: Bucket, key, path, signal }),
 
-    remove: (keys) => withStorage(async () => {
+    remove: keys => withStorage(async () => {
       for (let at = 0; at < keys.length; at += REMOVE_BATCH) {
-        const Objects = keys.slice(at, at + REMOVE_BATCH).map((Key) => ({ Key }))
+        const Objects = keys.slice(at, at + REMOVE_BATCH).map(Key => ({ Key }))
         const { Errors } = await client.send(new DeleteObjectsCommand({ Bucket, Delete: { Objects, Quiet: true } }))
         if (Errors?.length) throw new DomainError('unavailable', `${Errors.length} stored files could not be removed. Try again in a minute.`)
       }
@@ -125,7 +128,8 @@ export function createS3Storage(config: S3StorageConfig): Storage & { close(): v
         for await (const page of paginateListObjectsV2({ client }, { Bucket, Prefix: prefix })) {
           for (const { Key, Size } of page.Contents ?? []) yield { key: Key!, sizeBytes: Size ?? 0 }
         }
-      } catch (error) {
+      }
+      catch (error) {
         throw storageError(error)
       }
     },
@@ -141,7 +145,8 @@ export function createS3Storage(config: S3StorageConfig): Storage & { close(): v
         for await (const page of paginateListParts({ client }, { Bucket, Key: key, UploadId: uploadId })) {
           for (const part of page.Parts ?? []) parts.push({ partNumber: part.PartNumber!, sizeBytes: part.Size ?? 0, etag: bareEtag(part.ETag) })
         }
-      } catch (error) {
+      }
+      catch (error) {
         if (isMissing(error)) return null
         throw storageError(error)
       }
@@ -153,7 +158,8 @@ export function createS3Storage(config: S3StorageConfig): Storage & { close(): v
       let failure: unknown = null
       try {
         await client.send(new CompleteMultipartUploadCommand({ Bucket, Key: key, UploadId: uploadId, MultipartUpload: { Parts } }))
-      } catch (error) {
+      }
+      catch (error) {
         failure = error
       }
       // The answer to this or an earlier attempt may have been lost while the object was made.
@@ -202,6 +208,6 @@ export function createS3Storage(config: S3StorageConfig): Storage & { close(): v
 /** RFC 6266: a plain name for old clients, the true one beside it. */
 function attachment(name: string): string {
   const plain = name.normalize('NFKD').replace(/\p{M}/gu, '').replace(/[^\x20-\x7E]/g, '_').replace(/["\\]/g, '_')
-  const full = encodeURIComponent(name).replace(/[!'()*]/g, (c) => `%${c.charCodeAt(0).toString(16).toUpperCase()}`)
+  const full = encodeURIComponent(name).replace(/[!'()*]/g, c => `%${c.charCodeAt(0).toString(16).toUpperCase()}`)
   return `attachment; filename="${plain}"; filename*=UTF-8''${full}`
 }

@@ -29,19 +29,20 @@ export class Blobs {
     const blob = randomBytes(16).toString('hex')
     const temp = join(this.tempDir, blob)
     const handle = await open(temp, 'wx', 0o600)
-    let sizeBytes = 0
+    let extent: Extent
     try {
-      sizeBytes = await pour(source, handle, onBytes)
+      extent = { blob, sizeBytes: await pour(source, handle, onBytes) }
       await handle.datasync()
       await handle.close()
       await rename(temp, join(this.dir, blob))
-    } catch (error) {
+    }
+    catch (error) {
       await handle.close().catch(() => undefined)
       await rm(temp, { force: true })
       throw error
     }
     await syncFolder(this.dir)
-    return { blob, sizeBytes }
+    return extent
   }
 
   /** A second name for the same bytes, so that a copy costs no copying. */
@@ -53,7 +54,8 @@ export class Blobs {
         await link(join(this.dir, extent.blob), join(this.dir, blob))
         copies.push({ ...extent, blob })
       }
-    } catch (error) {
+    }
+    catch (error) {
       this.discard(copies)
       throw error
     }
@@ -109,14 +111,15 @@ export class Blobs {
           position += bytesRead
           yield buffer.subarray(0, bytesRead)
         }
-      } finally {
+      }
+      finally {
         await handle.close()
       }
     }
   }
 
   async sweep(used: Set<string>): Promise<number> {
-    const leftovers = (await readdir(this.dir)).filter((name) => !used.has(name))
+    const leftovers = (await readdir(this.dir)).filter(name => !used.has(name))
     for (const name of leftovers) await rm(join(this.dir, name), { force: true })
     return leftovers.length
   }

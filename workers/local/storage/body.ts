@@ -36,7 +36,7 @@ export function openBody(exchange: Exchange, maxBytes = MAX_PUT_BYTES): Body {
         chain: payload.chain,
         trailer: payload.trailer,
         decodedLength: sizeBytes,
-        onTrailers: (trailers) => digests.takeTrailers(trailers),
+        onTrailers: trailers => digests.takeTrailers(trailers),
       })
     : raw
   return { bytes, sizeBytes, digests, verify: () => digests.finish() }
@@ -57,9 +57,11 @@ async function* readMessage(exchange: Exchange, length: number): AsyncGenerator<
       received += bytes.length
       yield bytes
     }
-  } catch {
+  }
+  catch {
     throw incompleteBody()
-  } finally {
+  }
+  finally {
     message.setTimeout(0)
     message.off('timeout', silence)
   }
@@ -77,7 +79,8 @@ export async function readXml(exchange: Exchange): Promise<XmlElement> {
   body.verify()
   try {
     return parseXml(new TextDecoder('utf-8', { fatal: true }).decode(Buffer.concat(pieces)))
-  } catch {
+  }
+  catch {
     throw malformedXml()
   }
 }
@@ -95,9 +98,11 @@ export async function drain(exchange: Pick<Exchange, 'message'>, maxBytes: numbe
       if (left < 0 || Date.now() > deadline) return false
     }
     return true
-  } catch {
+  }
+  catch {
     return false
-  } finally {
+  }
+  finally {
     clearTimeout(timer)
   }
 }

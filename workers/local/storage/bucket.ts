@@ -60,7 +60,7 @@ export class Bucket {
     const names = await readdir(dir)
     if (!names.includes('upload.json')) return null
     const upload: Upload = { ...await readJson<UploadRecord>(join(dir, 'upload.json')), parts: new Map(), touchedMs: (await stat(dir)).mtimeMs }
-    for (const name of names.filter((candidate) => candidate.startsWith('part-'))) {
+    for (const name of names.filter(candidate => candidate.startsWith('part-'))) {
       const part = await readJson<PartRecord>(join(dir, name))
       upload.parts.set(part.partNumber, part)
     }
@@ -151,7 +151,7 @@ export class Bucket {
       const { record, chosen } = build()
       await this.putObject(record, allowed)
       await this.forgetUpload(upload)
-      this.blobs.discard([...upload.parts.values()].filter((part) => !chosen.has(part.partNumber)))
+      this.blobs.discard([...upload.parts.values()].filter(part => !chosen.has(part.partNumber)))
       return record
     })
   }

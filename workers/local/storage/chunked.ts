@@ -49,6 +49,11 @@ class ByteReader {
     return text.slice(0, -2)
   }
 
+  /** Lets go of the source, so that whoever reads on finds it as it was left. */
+  async release(): Promise<void> {
+    await this.source.return?.()
+  }
+
   async expectEnd(): Promise<void> {
     if (await this.fill()) throw invalidRequest('There are bytes after the last chunk.')
   }
@@ -75,6 +80,15 @@ export interface ChunkedOptions {
  */
 export async function* decodeChunked(source: AsyncIterable<Buffer>, options: ChunkedOptions): AsyncGenerator<Buffer> {
   const reader = new ByteReader(source)
+  try {
+    yield* decode(reader, options)
+  }
+  finally {
+    await reader.release()
+  }
+}
+
+async function* decode(reader: ByteReader, options: ChunkedOptions): AsyncGenerator<Buffer> {
   let total = 0
   for (;;) {
     const { size, signature } = parseHeader(await reader.line())

@@ -3,7 +3,7 @@ import { preconditionFailed } from './errors'
 export interface Validators { etag: string, lastModified: Date }
 
 function listsEtag(header: string, etag: string): boolean {
-  return header.split(',').map((item) => item.trim().replace(/^W\//, '')).some((item) => item === '*' || item.replace(/^"|"$/g, '') === etag)
+  return header.split(',').map(item => item.trim().replace(/^W\//, '')).some(item => item === '*' || item.replace(/^"|"$/g, '') === etag)
 }
 
 const wholeSeconds = (date: Date) => Math.floor(date.getTime() / 1000) * 1000
@@ -18,7 +18,8 @@ export function mayRead(headers: Record<string, string | undefined>, current: Va
   const modified = wholeSeconds(current.lastModified)
   if (match !== undefined) {
     if (!listsEtag(match, current.etag)) throw preconditionFailed()
-  } else if (given('if-unmodified-since') !== undefined) {
+  }
+  else if (given('if-unmodified-since') !== undefined) {
     if (modified > Date.parse(given('if-unmodified-since')!)) throw preconditionFailed()
   }
   if (noneMatch !== undefined) return !listsEtag(noneMatch, current.etag)

@@ -22,24 +22,24 @@ export function parseCors(root: XmlElement): CorsRule[] {
   const rules = childrenNamed(root, 'CORSRule')
   if (root.name !== 'CORSConfiguration' || rules.length === 0 || rules.length > MAX_RULES) throw malformedXml()
   return rules.map((rule) => {
-    const texts = (name: string) => childrenNamed(rule, name).map((element) => element.text.trim())
+    const texts = (name: string) => childrenNamed(rule, name).map(element => element.text.trim())
     const [allowedOrigins, allowedMethods, [maxAge]] = [texts('AllowedOrigin'), texts('AllowedMethod'), texts('MaxAgeSeconds')]
     if (!allowedOrigins.length || !allowedMethods.length) throw malformedXml()
-    if (allowedMethods.some((method) => !METHODS.includes(method))) throw new S3Error(400, 'InvalidRequest', 'Found unsupported HTTP method in CORS config.')
-    if ([...allowedOrigins, ...texts('AllowedHeader')].some((pattern) => pattern.split('*').length > 2)) {
+    if (allowedMethods.some(method => !METHODS.includes(method))) throw new S3Error(400, 'InvalidRequest', 'Found unsupported HTTP method in CORS config.')
+    if ([...allowedOrigins, ...texts('AllowedHeader')].some(pattern => pattern.split('*').length > 2)) {
       throw new S3Error(400, 'InvalidRequest', 'AllowedOrigin and AllowedHeader can not have more than one wildcard.')
     }
-    if (texts('ExposeHeader').some((name) => !/^[\w-]+$/.test(name)) || (maxAge && !/^\d{1,9}$/.test(maxAge))) throw malformedXml()
+    if (texts('ExposeHeader').some(name => !/^[\w-]+$/.test(name)) || (maxAge && !/^\d{1,9}$/.test(maxAge))) throw malformedXml()
     return { allowedOrigins, allowedMethods, allowedHeaders: texts('AllowedHeader'), exposeHeaders: texts('ExposeHeader'), maxAgeSeconds: maxAge ? Number(maxAge) : null }
   })
 }
 
 export function corsDocument(rules: CorsRule[]): string {
-  return document('CORSConfiguration', ...rules.map((rule) => branch('CORSRule',
-    ...rule.allowedOrigins.map((value) => leaf('AllowedOrigin', value)),
-    ...rule.allowedMethods.map((value) => leaf('AllowedMethod', value)),
-    ...rule.allowedHeaders.map((value) => leaf('AllowedHeader', value)),
-    ...rule.exposeHeaders.map((value) => leaf('ExposeHeader', value)),
+  return document('CORSConfiguration', ...rules.map(rule => branch('CORSRule',
+    ...rule.allowedOrigins.map(value => leaf('AllowedOrigin', value)),
+    ...rule.allowedMethods.map(value => leaf('AllowedMethod', value)),
+    ...rule.allowedHeaders.map(value => leaf('AllowedHeader', value)),
+    ...rule.exposeHeaders.map(value => leaf('ExposeHeader', value)),
     ...(rule.maxAgeSeconds === null ? [] : [leaf('MaxAgeSeconds', rule.maxAgeSeconds)]),
   )))
 }
@@ -53,10 +53,10 @@ function fits(pattern: string, value: string): boolean {
 
 /** The first rule that allows the origin, the method and every header asked for. */
 export function matchRule(rules: CorsRule[], origin: string, method: string, headers: string[]): CorsRule | null {
-  return rules.find((rule) =>
-    rule.allowedOrigins.some((pattern) => fits(pattern, origin))
+  return rules.find(rule =>
+    rule.allowedOrigins.some(pattern => fits(pattern, origin))
     && rule.allowedMethods.includes(method)
-    && headers.every((name) => rule.allowedHeaders.some((pattern) => fits(pattern.toLowerCase(), name)))) ?? null
+    && headers.every(name => rule.allowedHeaders.some(pattern => fits(pattern.toLowerCase(), name)))) ?? null
 }
 
 function allowOrigin(response: ServerResponse, rule: CorsRule, origin: string): void {
@@ -76,7 +76,7 @@ export function applyCors(response: ServerResponse, request: S3Request, rules: C
 export function answerPreflight(response: ServerResponse, request: S3Request, rules: CorsRule[]): void {
   const { origin, 'access-control-request-method': method, 'access-control-request-headers': wanted } = request.headers
   if (!origin || !method) throw new S3Error(400, 'BadRequest', 'Insufficient information. Origin and Access-Control-Request-Method request headers needed.')
-  const headers = (wanted ?? '').split(',').map((name) => name.trim().toLowerCase()).filter(Boolean)
+  const headers = (wanted ?? '').split(',').map(name => name.trim().toLowerCase()).filter(Boolean)
   const rule = matchRule(rules, origin, method, headers)
   if (!rule) throw new S3Error(403, 'AccessForbidden', 'CORSResponse: This CORS request is not allowed.')
   allowOrigin(response, rule, origin)

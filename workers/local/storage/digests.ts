@@ -12,7 +12,7 @@ const badDigest = (what: string) => new S3Error(400, 'BadDigest', `The ${what} y
 
 function checksumName(header: string): ChecksumName {
   const name = header.slice('x-amz-checksum-'.length)
-  const known = SUPPORTED.find((candidate) => candidate === name)
+  const known = SUPPORTED.find(candidate => candidate === name)
   if (!known) throw notImplemented(`the checksum ${name}`)
   return known
 }
@@ -45,7 +45,8 @@ export class Digests {
     if (trailer?.startsWith('x-amz-checksum-')) {
       this.awaited = checksumName(trailer)
       this.compute(this.awaited)
-    } else if (trailer) {
+    }
+    else if (trailer) {
       throw notImplemented(`the trailer ${trailer}`)
     }
     if (payloadSha256) this.compute('sha256')

@@ -7,7 +7,8 @@ export async function syncFolder(path: string): Promise<void> {
   const handle = await open(path, 'r')
   try {
     await handle.sync()
-  } finally {
+  }
+  finally {
     await handle.close()
   }
 }
@@ -24,7 +25,8 @@ export async function writeJson(tempDir: string, path: string, value: unknown): 
   try {
     await handle.writeFile(JSON.stringify(value))
     await handle.sync()
-  } catch (error) {
+  }
+  catch (error) {
     await handle.close()
     await unlink(temp)
     throw error
@@ -37,7 +39,8 @@ export async function writeJson(tempDir: string, path: string, value: unknown): 
 export async function readJson<T>(path: string): Promise<T> {
   try {
     return JSON.parse(await readFile(path, 'utf8')) as T
-  } catch (cause) {
+  }
+  catch (cause) {
     throw new Error(`The storage record ${path} cannot be read. Nothing was changed. Restore it from a backup or move it away.`, { cause })
   }
 }
@@ -58,7 +61,8 @@ export class KeyedLock {
     this.tails.set(key, tail)
     try {
       return await mine
-    } finally {
+    }
+    finally {
       if (this.tails.get(key) === tail) this.tails.delete(key)
     }
   }

@@ -7,7 +7,7 @@ const settings = z.object({
   STORAGE_DATA_DIR: z.string().min(1),
   STORAGE_HOST: z.string().min(1).default('127.0.0.1'),
   STORAGE_PORT: z.coerce.number().int().min(0).max(65535),
-  STORAGE_CORS_ORIGINS: z.string().default('').transform((text) => text.split(',').map((origin) => origin.trim()).filter(Boolean)),
+  STORAGE_CORS_ORIGINS: z.string().default('').transform(text => text.split(',').map(origin => origin.trim()).filter(Boolean)),
   STORAGE_MEDIA_RANGE_CAP_BYTES: z.coerce.number().int().min(0).optional(),
   S3_ACCESS_KEY_ID: z.string().min(3),
   S3_SECRET_ACCESS_KEY: z.string().min(8),

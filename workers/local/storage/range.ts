@@ -1,8 +1,8 @@
 /** Byte positions are inclusive at both ends, as in RFC 9110 section 14. */
-export type ByteRange =
-  | { kind: 'whole' }
-  | { kind: 'part', start: number, end: number, openEnded: boolean }
-  | { kind: 'unsatisfiable' }
+export type ByteRange
+  = | { kind: 'whole' }
+    | { kind: 'part', start: number, end: number, openEnded: boolean }
+    | { kind: 'unsatisfiable' }
 
 /**
  * Reads one Range header against an object of `sizeBytes`. What cannot be read, and lists of several

@@ -17,7 +17,8 @@ export interface S3Request {
 function decode(text: string): string {
   try {
     return decodeURIComponent(text)
-  } catch {
+  }
+  catch {
     throw new S3Error(400, 'InvalidURI', 'Could not parse the specified URI.')
   }
 }
@@ -48,7 +49,7 @@ export function parseRequest(message: IncomingMessage): S3Request {
     key: slash < 0 ? '' : path.slice(slash + 1),
     query,
     headers,
-    param: (name) => query.find(([key]) => key === name)?.[1],
+    param: name => query.find(([key]) => key === name)?.[1],
   }
 }
 

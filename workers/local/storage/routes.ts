@@ -9,7 +9,7 @@ import type { S3Request } from './request'
 interface Route { run: Operation, params?: string[] }
 
 const LIST_PARAMS = ['prefix', 'delimiter', 'max-keys', 'encoding-type', 'continuation-token', 'start-after', 'fetch-owner']
-const OVERRIDE_PARAMS = ['content-type', 'content-language', 'expires', 'cache-control', 'content-disposition', 'content-encoding'].map((name) => `response-${name}`)
+const OVERRIDE_PARAMS = ['content-type', 'content-language', 'expires', 'cache-control', 'content-disposition', 'content-encoding'].map(name => `response-${name}`)
 
 /** Keyed by method, level and sub-resource. */
 const ROUTES: Record<string, Route> = {
@@ -44,13 +44,13 @@ const DEFAULTS: Record<string, string> = { 'x-amz-acl': 'private', 'x-amz-storag
 export function findOperation(request: S3Request): Operation {
   const level = request.key ? 'object' : request.bucket ? 'bucket' : 'service'
   const names = request.query.map(([name]) => name)
-  const sub = SUB_RESOURCES.find((name) => names.includes(name))
+  const sub = SUB_RESOURCES.find(name => names.includes(name))
   const route = ROUTES[[request.method, level, ...(sub ? [sub] : [])].join(' ')]
   if (!route) {
     if (!sub && !['GET', 'HEAD', 'PUT', 'POST', 'DELETE'].includes(request.method)) throw new S3Error(405, 'MethodNotAllowed', 'The specified method is not allowed against this resource.')
     throw notImplemented(`${request.method} on ${level}${sub ? ` with ${sub}` : ''}`)
   }
-  const strange = names.find((name) => name !== sub && !route.params?.includes(name) && !ANYWHERE.test(name))
+  const strange = names.find(name => name !== sub && !route.params?.includes(name) && !ANYWHERE.test(name))
   if (strange) throw notImplemented(`the parameter ${strange} here`)
   if (sub === 'list-type' && request.param(sub) !== '2') throw notImplemented('this version of the listing')
   checkKey(request.key)

@@ -56,7 +56,8 @@ export async function startStorageServer(options: StorageServerOptions): Promise
     const exchange = { request, message, response, payload, awaitsContinue, store, options: settings }
     try {
       await runOperation(exchange)
-    } finally {
+    }
+    finally {
       waiting.set(message, exchange.awaitsContinue)
     }
   }
@@ -65,7 +66,8 @@ export async function startStorageServer(options: StorageServerOptions): Promise
     waiting.set(message, awaitsContinue)
     try {
       await serve(message, response, awaitsContinue)
-    } catch (error) {
+    }
+    catch (error) {
       const known = asS3Error(error)
       if (!known && !response.destroyed && !message.destroyed) log(`${message.method} ${String(message.url).split('?')[0]}: ${String(error)}`)
       await refuse(message, response, known ?? new S3Error(500, 'InternalError', 'We encountered an internal error. Please try again.'))
@@ -94,7 +96,8 @@ export async function startStorageServer(options: StorageServerOptions): Promise
       server.once('error', reject)
       server.listen(options.port, options.host, resolve)
     })
-  } catch (error) {
+  }
+  catch (error) {
     await store.close()
     throw error
   }
@@ -125,4 +128,3 @@ function asS3Error(error: unknown): S3Error | null {
   if (code === 'ENOSPC' || code === 'EDQUOT') return new S3Error(507, 'InsufficientStorage', 'The disk is full. Nothing was changed. Make room and try again.')
   return null
 }
-

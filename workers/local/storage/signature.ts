@@ -15,10 +15,10 @@ const MAX_EXPIRES_S = 7 * 24 * 3600
 export interface Credentials { accessKeyId: string, secretAccessKey: string, region: string }
 
 /** What the signature says about the body. */
-export type Payload =
-  | { kind: 'unsigned' }
-  | { kind: 'sha256', hex: string }
-  | { kind: 'chunked', chain: ChunkChain | null, trailer: boolean }
+export type Payload
+  = | { kind: 'unsigned' }
+    | { kind: 'sha256', hex: string }
+    | { kind: 'chunked', chain: ChunkChain | null, trailer: boolean }
 
 const hmac = (key: string | Buffer, text: string) => createHmac('sha256', key).update(text, 'utf8').digest()
 const sha256 = (text: string) => createHash('sha256').update(text, 'utf8').digest('hex')
@@ -29,7 +29,7 @@ function sameText(a: string, b: string): boolean {
 }
 
 export function uriEncode(text: string, keepSlash = false): string {
-  const encoded = encodeURIComponent(text).replace(/[!'()*]/g, (c) => `%${c.charCodeAt(0).toString(16).toUpperCase()}`)
+  const encoded = encodeURIComponent(text).replace(/[!'()*]/g, c => `%${c.charCodeAt(0).toString(16).toUpperCase()}`)
   return keepSlash ? encoded.replaceAll('%2F', '/') : encoded
 }
 
@@ -47,7 +47,7 @@ function compare(a: string, b: string): number {
 }
 
 function canonicalRequest(request: S3Request, signedHeaders: string[], payloadHash: string): string {
-  const headers = signedHeaders.map((name) => `${name}:${(request.headers[name] ?? '').trim().replace(/\s+/g, ' ')}\n`)
+  const headers = signedHeaders.map(name => `${name}:${(request.headers[name] ?? '').trim().replace(/\s+/g, ' ')}\n`)
   return [
     request.method, uriEncode(request.path, true), canonicalQuery(request.query),
     headers.join(''), signedHeaders.join(';'), payloadHash,
@@ -126,7 +126,8 @@ export function verifyRequest(request: S3Request, credentials: Credentials, nowM
   if (presigned) {
     if (signedAtMs > nowMs + MAX_SKEW_MS) throw accessDenied('Request is not valid yet.')
     if (signedAtMs + presigned.expiresSeconds * 1000 < nowMs) throw accessDenied('Request has expired.')
-  } else if (Math.abs(signedAtMs - nowMs) > MAX_SKEW_MS) {
+  }
+  else if (Math.abs(signedAtMs - nowMs) > MAX_SKEW_MS) {
     throw new S3Error(403, 'RequestTimeTooSkewed', 'The difference between the request time and the current time is too large.')
   }
 
@@ -143,8 +144,8 @@ function requireSigned(request: S3Request, signedHeaders: string[]): void {
   const sorted = [...signedHeaders].sort(compare)
   if (sorted.some((name, index) => name !== signedHeaders[index] || name !== name.toLowerCase())) throw signatureMismatch()
   if (!signedHeaders.includes('host')) throw accessDenied('The host header must be signed.')
-  if (signedHeaders.some((name) => request.headers[name] === undefined)) throw signatureMismatch()
-  const loose = Object.keys(request.headers).find((name) => name.startsWith('x-amz-') && !signedHeaders.includes(name))
+  if (signedHeaders.some(name => request.headers[name] === undefined)) throw signatureMismatch()
+  const loose = Object.keys(request.headers).find(name => name.startsWith('x-amz-') && !signedHeaders.includes(name))
   if (loose) throw accessDenied(`There were headers present in the request which were not signed: ${loose}`)
 }
 

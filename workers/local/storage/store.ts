@@ -36,7 +36,8 @@ export class Store {
       const store = new Store(bucketsDir, tempDir, blobs, unlock)
       await store.load(log)
       return store
-    } catch (error) {
+    }
+    catch (error) {
       await unlock()
       throw error
     }
@@ -114,5 +115,5 @@ async function lockFolder(dataDir: string): Promise<() => Promise<void>> {
     holder.listen(name, resolve)
   })
   holder.unref()
-  return () => new Promise((resolve) => holder.close(() => resolve()))
+  return () => new Promise(resolve => holder.close(() => resolve()))
 }

@@ -4,7 +4,7 @@ const DECLARATION = '<?xml version="1.0" encoding="UTF-8"?>\n'
 export const S3_NAMESPACE = 'http://s3.amazonaws.com/doc/2006-03-01/'
 
 export function escapeXml(value: string): string {
-  return value.replace(/[&<>"'\r\n]/g, (character) => `&#${character.charCodeAt(0)};`)
+  return value.replace(/[&<>"'\r\n]/g, character => `&#${character.charCodeAt(0)};`)
 }
 
 /** One element holding text. */
@@ -60,10 +60,12 @@ export function parseXml(source: string): XmlElement {
     const current = stack[stack.length - 1]!
     if (text !== undefined) {
       current.text += decodeEntities(text)
-    } else if (name && closing) {
+    }
+    else if (name && closing) {
       if (stack.length < 2 || current.name !== name) throw malformedXml()
       stack.pop()
-    } else if (name) {
+    }
+    else if (name) {
       if (stack.length > MAX_DEPTH) throw malformedXml()
       const element: XmlElement = { name, text: '', children: [] }
       current.children.push(element)
@@ -75,9 +77,9 @@ export function parseXml(source: string): XmlElement {
 }
 
 export function childrenNamed(element: XmlElement, name: string): XmlElement[] {
-  return element.children.filter((child) => child.name === name)
+  return element.children.filter(child => child.name === name)
 }
 
 export function textOf(element: XmlElement, name: string): string | undefined {
-  return element.children.find((child) => child.name === name)?.text
+  return element.children.find(child => child.name === name)?.text
 }

@@ -58,7 +58,7 @@ export async function deleteBucketCors({ request, store, response }: Exchange): 
 export function keyWriter(request: S3Request): (text: string) => string {
   const encoding = request.param('encoding-type')
   if (encoding !== undefined && encoding !== 'url') throw invalidArgument('Invalid Encoding Method specified in Request')
-  return encoding ? (text) => uriEncode(text, true) : (text) => text
+  return encoding ? text => uriEncode(text, true) : text => text
 }
 
 export async function listObjects({ request, store, response }: Exchange): Promise<void> {
@@ -83,21 +83,21 @@ export async function listObjects({ request, store, response }: Exchange): Promi
     leaf('IsTruncated', page.next !== null),
     ...(page.next === null ? [] : [leaf('NextContinuationToken', Buffer.from(page.next).toString('base64url'))]),
     ...contents,
-    ...page.prefixes.map((value) => branch('CommonPrefixes', leaf('Prefix', write(value)))),
+    ...page.prefixes.map(value => branch('CommonPrefixes', leaf('Prefix', write(value)))),
   ))
 }
 
 export async function deleteObjects(exchange: Exchange): Promise<void> {
   const bucket = exchange.store.bucket(exchange.request.bucket)
   const { headers } = exchange.request
-  const checked = headers['content-md5'] ?? Object.keys(headers).find((name) => name.startsWith('x-amz-checksum-')) ?? headers['x-amz-trailer']
+  const checked = headers['content-md5'] ?? Object.keys(headers).find(name => name.startsWith('x-amz-checksum-')) ?? headers['x-amz-trailer']
   if (!checked && exchange.payload.kind !== 'sha256') throw new S3Error(400, 'InvalidRequest', 'Missing required header for this request: Content-MD5 or a checksum.')
   const root = await readXml(exchange)
   const items = childrenNamed(root, 'Object')
   if (root.name !== 'Delete' || items.length === 0 || items.length > 1000) throw malformedXml()
-  const keys = items.map((item) => textOf(item, 'Key') ?? '')
+  const keys = items.map(item => textOf(item, 'Key') ?? '')
   if (keys.includes('')) throw malformedXml()
   for (const key of keys) await bucket.removeObject(key)
   const quiet = textOf(root, 'Quiet') === 'true'
-  sendXml(exchange.response, document('DeleteResult', ...(quiet ? [] : keys.map((key) => branch('Deleted', leaf('Key', key))))))
+  sendXml(exchange.response, document('DeleteResult', ...(quiet ? [] : keys.map(key => branch('Deleted', leaf('Key', key))))))
 }

@@ -35,7 +35,8 @@ export async function uploadPart(exchange: Exchange): Promise<void> {
     const part: PartRecord = { partNumber, etag: md5.toString('hex'), lastModified: new Date().toISOString(), checksums, ...extent }
     await bucket.putPart(upload, part)
     sendEmpty(response, 200, { etag: `"${part.etag}"`, ...checksumHeaders(checksums) })
-  } catch (error) {
+  }
+  catch (error) {
     store.blobs.discard([extent])
     throw error
   }
@@ -45,13 +46,13 @@ export async function listParts({ request, store, response }: Exchange): Promise
   const upload = store.bucket(request.bucket).upload(request.key, request.param('uploadId'))
   const marker = wholeParam(request, 'part-number-marker', 0, 0, MAX_PART_NUMBER)
   const max = wholeParam(request, 'max-parts', 1000, 1, 1000)
-  const rest = [...upload.parts.values()].filter((part) => part.partNumber > marker).sort((a, b) => a.partNumber - b.partNumber)
+  const rest = [...upload.parts.values()].filter(part => part.partNumber > marker).sort((a, b) => a.partNumber - b.partNumber)
   const page = rest.slice(0, max)
   const truncated = rest.length > page.length
   sendXml(response, document('ListPartsResult',
     leaf('Bucket', request.bucket), leaf('Key', upload.key), leaf('UploadId', upload.uploadId), leaf('PartNumberMarker', marker), leaf('MaxParts', max),
     leaf('IsTruncated', truncated), ...(truncated ? [leaf('NextPartNumberMarker', page[page.length - 1]!.partNumber)] : []),
-    ...page.map((part) => branch('Part', leaf('PartNumber', part.partNumber), leaf('LastModified', part.lastModified), leaf('ETag', `"${part.etag}"`), leaf('Size', part.sizeBytes))),
+    ...page.map(part => branch('Part', leaf('PartNumber', part.partNumber), leaf('LastModified', part.lastModified), leaf('ETag', `"${part.etag}"`), leaf('Size', part.sizeBytes))),
   ))
 }
 
@@ -65,7 +66,7 @@ export async function listMultipartUploads({ request, store, response }: Exchang
     if (!keyMarker) return true
     return idMarker ? order(upload, { key: keyMarker, uploadId: idMarker }) > 0 : compareKeys(upload.key, keyMarker) > 0
   }
-  const rest = [...store.bucket(request.bucket).uploads.values()].filter((upload) => upload.key.startsWith(prefix) && isAfter(upload)).sort(order)
+  const rest = [...store.bucket(request.bucket).uploads.values()].filter(upload => upload.key.startsWith(prefix) && isAfter(upload)).sort(order)
   const page = rest.slice(0, max)
   const last = rest.length > page.length ? page[page.length - 1] : undefined
   sendXml(response, document('ListMultipartUploadsResult',
@@ -73,7 +74,7 @@ export async function listMultipartUploads({ request, store, response }: Exchang
     ...(request.param('encoding-type') ? [leaf('EncodingType', 'url')] : []),
     leaf('IsTruncated', last !== undefined),
     ...(last ? [leaf('NextKeyMarker', write(last.key)), leaf('NextUploadIdMarker', last.uploadId)] : []),
-    ...page.map((upload) => branch('Upload', leaf('Key', write(upload.key)), leaf('UploadId', upload.uploadId), leaf('Initiated', upload.initiated), leaf('StorageClass', 'STANDARD'))),
+    ...page.map(upload => branch('Upload', leaf('Key', write(upload.key)), leaf('UploadId', upload.uploadId), leaf('Initiated', upload.initiated), leaf('StorageClass', 'STANDARD'))),
   ))
 }
 
@@ -115,14 +116,14 @@ function joinParts(request: S3Request, upload: Upload, chosen: ChosenPart[]): { 
   const sizeBytes = parts.reduce((sum, part) => sum + part.sizeBytes, 0)
   const announced = request.headers['x-amz-mp-object-size']
   if (announced !== undefined && Number(announced) !== sizeBytes) throw invalidRequest(`The provided 'x-amz-mp-object-size' header does not match what was uploaded.`)
-  const etag = createHash('md5').update(Buffer.concat(parts.map((part) => Buffer.from(part.etag, 'hex')))).digest('hex')
+  const etag = createHash('md5').update(Buffer.concat(parts.map(part => Buffer.from(part.etag, 'hex')))).digest('hex')
   const record: ObjectRecord = {
     key: upload.key, sizeBytes, etag: `${etag}-${parts.length}`, lastModified: new Date().toISOString(),
     headers: upload.headers, metadata: upload.metadata, checksums: {},
     extents: parts.map(({ blob, sizeBytes: partBytes }) => ({ blob, sizeBytes: partBytes })),
     uploadId: upload.uploadId,
   }
-  return { record, chosen: new Set(parts.map((part) => part.partNumber)) }
+  return { record, chosen: new Set(parts.map(part => part.partNumber)) }
 }
 
 export async function completeMultipartUpload(exchange: Exchange): Promise<void> {

@@ -25,7 +25,7 @@ export function attributesOf(request: S3Request): Attributes {
   const attributes: Attributes = { headers: {}, metadata: {} }
   for (const name of KEPT_HEADERS) {
     // `aws-chunked` describes the way here, not the object.
-    const value = request.headers[name]?.split(',').map((item) => item.trim()).filter((item) => name !== 'content-encoding' || item !== 'aws-chunked').join(', ')
+    const value = request.headers[name]?.split(',').map(item => item.trim()).filter(item => name !== 'content-encoding' || item !== 'aws-chunked').join(', ')
     if (value) attributes.headers[name] = value
   }
   let size = 0
@@ -44,7 +44,7 @@ export async function putObject(exchange: Exchange): Promise<void> {
   const attributes = attributesOf(request)
   const body = openBody(exchange)
   checkWrite(request)(bucket.objects.get(request.key) ?? null)
-  const extent = await store.blobs.write(body.bytes, (bytes) => body.digests.update(bytes))
+  const extent = await store.blobs.write(body.bytes, bytes => body.digests.update(bytes))
   try {
     const { md5, checksums } = body.verify()
     const record: ObjectRecord = {
@@ -53,7 +53,8 @@ export async function putObject(exchange: Exchange): Promise<void> {
     }
     await bucket.putObject(record, checkWrite(request))
     sendEmpty(response, 200, { etag: `"${record.etag}"`, ...checksumHeaders(checksums) })
-  } catch (error) {
+  }
+  catch (error) {
     store.blobs.discard([extent])
     throw error
   }
@@ -111,7 +112,8 @@ export async function getObject(exchange: Exchange): Promise<void> {
     response.writeHead(range.kind === 'part' ? 206 : 200, headers)
     if (request.method === 'HEAD') response.end()
     else await pipeline(store.blobs.read(record.extents, start, end), response)
-  } finally {
+  }
+  finally {
     unpin()
   }
 }
@@ -126,7 +128,8 @@ function copySource(request: S3Request): { bucket: string, key: string } {
   const [raw = '', query] = request.headers['x-amz-copy-source']!.split('?')
   try {
     path = decodeURIComponent(raw).replace(/^\//, '')
-  } catch {
+  }
+  catch {
     throw invalidArgument('The copy source must be URL-encoded.')
   }
   const slash = path.indexOf('/')
@@ -154,12 +157,14 @@ export async function copyObject({ request, store, response }: Exchange): Promis
     }
     try {
       await target.putObject(record, checkWrite(request))
-    } catch (error) {
+    }
+    catch (error) {
       store.blobs.discard(extents)
       throw error
     }
     sendXml(response, document('CopyObjectResult', leaf('LastModified', record.lastModified), leaf('ETag', `"${record.etag}"`)))
-  } finally {
+  }
+  finally {
     unpin()
   }
 }
