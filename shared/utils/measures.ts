@@ -55,15 +55,16 @@ export function parseLength(text: string, units: BuildUnits): LengthReading {
   let total = new Fraction(0)
   let previous: LengthUnit | undefined
   while (rest.trim() !== '') {
-    const groups = TERM.exec(rest)?.groups
-    if (!groups) return refuse('is not a length. Write it as 1 1/2 in, 2\' 3 1/4" or 38 mm.')
+    const term = TERM.exec(rest)
+    if (!term) return refuse('is not a length. Write it as 1 1/2 in, 2\' 3 1/4" or 38 mm.')
+    const groups = term.groups!
     const unit = unitOf(groups.unit) ?? (previous === 'ft' ? 'in' : units === 'inch' ? 'in' : 'mm')
     if (previous && !(previous === 'ft' && unit === 'in')) return refuse('has more than one length in it. Only feet and inches go together.')
     if (groups.under !== undefined && /^0+$/.test(groups.under)) return refuse('has a zero under the bar.')
     total = total.add(valueOf(groups).mul(MM_PER[unit]))
     previous = unit
     // A dash may join feet and inches: 2'-3 1/4".
-    rest = rest.slice(TERM.exec(rest)![0].length).replace(/^\s*-\s*(?=\d)/, ' ')
+    rest = rest.slice(term[0].length).replace(/^\s*-\s*(?=\d)/, ' ')
   }
   if (total.compare(MAX_LENGTH_MM) > 0) return refuse('is over a kilometre. Check the unit.')
   return { ok: true, length: { mm: total.valueOf(), exactMm: total.toFraction(), unit: previous! } }
@@ -79,8 +80,8 @@ function normalise(text: string): string {
     .toLowerCase()
     .replace(/[½⅓⅔¼¾⅕⅖⅗⅘⅙⅚⅐⅛⅜⅝⅞⅑⅒]/g, sign => ` ${VULGAR[sign]}`)
     .replace(/[\u2044\u2215]/g, '/')
-    .replace(/[\u2033\u201C\u201D]|''/g, '"')
     .replace(/[\u2032\u2018\u2019]/g, '\'')
+    .replace(/[\u2033\u201C\u201D]|''/g, '"')
     .replace(/[\u2010-\u2015\u2212]/g, '-')
     .replace(/(\d),(\d)/g, '$1.$2') // a decimal comma; nobody writes thousands of inches
     .replace(/\s+/g, ' ')
