@@ -7,8 +7,13 @@ export interface JobPayloads {
   'index-footage': { clipId: string }
   'make-proxy': { clipId: string }
   'read-captions': { trackId: string }
+  /** Everything stored under a prefix, and an upload into it that never ended. */
+  'remove-objects': { prefix: string, upload?: { key: string, uploadId: string } }
 }
 export type JobName = keyof JobPayloads
+
+/** Waits grow by e each time: ten tries outlast a storage that is away for two hours. */
+export const MAX_ATTEMPTS = 10
 
 /**
  * Adds a job in the caller's transaction: the row and its job are written together or not at all.
@@ -17,5 +22,5 @@ export type JobName = keyof JobPayloads
 export async function addJob<Name extends JobName>(executor: Executor, name: Name, payload: JobPayloads[Name]): Promise<void> {
   const key = `${name}:${Object.values(payload)[0]}`
   await executor.execute(sql`
-    select graphile_worker.add_job(${name}::text, ${JSON.stringify(payload)}::json, job_key := ${key}::text, max_attempts := 6)`)
+    select graphile_worker.add_job(${name}::text, ${JSON.stringify(payload)}::json, job_key := ${key}::text, max_attempts := ${MAX_ATTEMPTS}::int)`)
 }

@@ -81,3 +81,23 @@ export interface ChapterView {
   version: number
   updatedBy: string | null
 }
+
+/** GET /api/builds/:build/sessions: one row a session, newest first. */
+export interface SessionSummary {
+  id: string
+  date: string
+  title: string
+  place: string
+  clipCount: number
+  /** Length of all probed clips together, ms; cameras that overlap count each. */
+  footageMs: number
+  /** Under chapters of either kind, ms. */
+  chapteredMs: number
+  /** Under inked chapters, ms. */
+  inkedMs: number
+  uploading: number
+  working: number
+  failed: number
+  captionsWaiting: number
+  stepNumbers: number[]
+}
