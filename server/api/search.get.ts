@@ -1,0 +1,9 @@
+import { search } from '#server/services/search/search'
+import { searchSchema } from '#shared/schemas/search'
+
+export default apiHandler(async (event) => {
+  const account = await whoAsks(event)
+  const query = readQueryAs(event, searchSchema)
+  await limits().spend('search-address', getRequestIP(event) ?? 'unknown')
+  return search(db(), account?.id ?? null, query)
+})
