@@ -43,8 +43,9 @@ export interface RawAnswer { status: number, headers: Record<string, string | st
 /** Sends without any normalising of the path, as a hostile client would. */
 export function sendRaw(endpoint: string, request: PlainRequest, body: Buffer | string = ''): Promise<RawAnswer> {
   const { hostname, port } = new URL(endpoint)
+  const length = request.headers['transfer-encoding'] ? {} : { 'content-length': Buffer.byteLength(body) }
   return new Promise((resolve, reject) => {
-    const outgoing = send({ hostname, port, method: request.method, path: targetOf(request), headers: { 'content-length': Buffer.byteLength(body), ...request.headers }, agent: false }, (incoming) => {
+    const outgoing = send({ hostname, port, method: request.method, path: targetOf(request), headers: { ...length, ...request.headers }, agent: false }, (incoming) => {
       const pieces: Buffer[] = []
       incoming.on('data', piece => pieces.push(piece))
       incoming.on('error', reject)

@@ -24,9 +24,11 @@ function lengthHeader(value: string | undefined): number {
 /** Prepares to read the body of a request; nothing has been read when this returns. */
 export function openBody(exchange: Exchange, maxBytes = MAX_PUT_BYTES): Body {
   const { request, payload } = exchange
-  const wireLength = lengthHeader(request.headers['content-length'])
   const chunked = payload.kind === 'chunked'
-  const sizeBytes = chunked ? lengthHeader(request.headers['x-amz-decoded-content-length']) : wireLength
+  // The chunks carry their own lengths, so a client may send them without knowing the sum.
+  const onTheWire = request.headers['content-length']
+  const wireLength = chunked && onTheWire === undefined ? null : lengthHeader(onTheWire)
+  const sizeBytes = wireLength === null || chunked ? lengthHeader(request.headers['x-amz-decoded-content-length']) : wireLength
   if (sizeBytes > maxBytes) throw new S3Error(400, 'EntityTooLarge', 'Your proposed upload exceeds the maximum allowed size.')
   if (!chunked && request.headers['x-amz-trailer']) throw invalidRequest('Trailing headers need an aws-chunked body.')
   const digests = new Digests(request.headers, payload.kind === 'sha256' ? payload.hex : null)
@@ -42,7 +44,7 @@ export function openBody(exchange: Exchange, maxBytes = MAX_PUT_BYTES): Body {
   return { bytes, sizeBytes, digests, verify: () => digests.finish() }
 }
 
-async function* readMessage(exchange: Exchange, length: number): AsyncGenerator<Buffer> {
+async function* readMessage(exchange: Exchange, length: number | null): AsyncGenerator<Buffer> {
   const { message, response } = exchange
   if (exchange.awaitsContinue) {
     exchange.awaitsContinue = false
@@ -65,7 +67,7 @@ async function* readMessage(exchange: Exchange, length: number): AsyncGenerator<
     message.setTimeout(0)
     message.off('timeout', silence)
   }
-  if (received !== length) throw incompleteBody()
+  if (length !== null && received !== length) throw incompleteBody()
 }
 
 /** Reads a small XML document. */
