@@ -7,6 +7,7 @@ import { DomainError, notFound } from '#shared/utils/errors'
 import type { Storage } from '../adapters/storage'
 import type { Database, Executor } from '../database/client'
 import { type Build, builds, captionTracks, chapters, clips, memberships, uploads } from '../database/schema'
+import { clipPrefix, trackPrefix } from './objectKeys'
 
 /** 32 signs without the ones that are mistaken for each other (i, l, o, u), so that 5 bits make one. */
 const SIGNS = '0123456789abcdefghjkmnpqrstvwxyz'
@@ -61,32 +62,41 @@ export async function changeBuild(executor: Executor, buildId: string, change: C
 /**
  * Deletes a build with all that hangs on it, when its name was typed right. The rows go in one transaction;
  * the stored files after it, because what is in the storage is worth nothing without its row and not the
- * other way round. Returns how many files could not be removed (the storage was away): nothing points at them.
+ * other way round. `storageCleared` is false when the storage was away: what is left there is found by its
+ * prefix, which no row owns any more.
  */
-export async function deleteBuild(database: Database, storage: Storage, buildId: string, typedName: string): Promise<{ leftOver: number }> {
-  const { keys, unfinished } = await database.transaction(async (tx) => {
+export async function deleteBuild(database: Database, storage: Storage, buildId: string, typedName: string): Promise<{ storageCleared: boolean }> {
+  const stored = await database.transaction(async (tx) => {
     const [build] = await tx.select().from(builds).where(eq(builds.id, buildId)).for('update')
     if (!build) throw notFound('That build')
     if (typedName.trim() !== build.name) {
       throw new DomainError('bad-input', `That is not the build's name, so nothing was deleted. Type “${build.name}” to delete it.`, { issues: [{ path: 'name', message: `Type “${build.name}”` }] })
     }
-    const found = await storedObjects(tx, buildId)
+    const found = await storedThings(tx, buildId)
     // Chapters hold on to their steps, so they go first.
     await tx.delete(chapters).where(eq(chapters.buildId, buildId))
     await tx.delete(builds).where(eq(builds.id, buildId))
     return found
   })
-  let leftOver = 0
-  for (const { key, uploadId } of unfinished) await storage.abortUpload(key, uploadId).catch(() => leftOver++)
-  if (keys.length) await storage.remove(keys).catch(() => leftOver += keys.length)
-  return { leftOver }
+  try {
+    for (const { key, uploadId } of stored.unfinished) await storage.abortUpload(key, uploadId)
+    for (const prefix of stored.prefixes) await removeUnder(storage, prefix)
+    return { storageCleared: true }
+  }
+  catch {
+    return { storageCleared: false }
+  }
 }
 
-async function storedObjects(executor: Executor, buildId: string): Promise<{ keys: string[], unfinished: { key: string, uploadId: string }[] }> {
-  const footage = await executor.select({ key: clips.objectKey, proxyKey: clips.proxyKey, footage: clips.footage }).from(clips).where(eq(clips.buildId, buildId))
-  const captions = await executor.select({ key: captionTracks.objectKey }).from(captionTracks).where(eq(captionTracks.buildId, buildId))
+async function storedThings(executor: Executor, buildId: string) {
+  const ofClips = await executor.select({ id: clips.id }).from(clips).where(eq(clips.buildId, buildId))
+  const ofTracks = await executor.select({ id: captionTracks.id }).from(captionTracks).where(eq(captionTracks.buildId, buildId))
   const unfinished = await executor.select({ key: clips.objectKey, uploadId: uploads.uploadId }).from(uploads).innerJoin(clips, and(eq(clips.id, uploads.clipId), eq(clips.buildId, buildId)))
-  const keys = footage.flatMap(clip => [clip.key, clip.proxyKey, clip.footage?.poster?.key, clip.footage?.peaks?.key, ...clip.footage?.sheets?.images ?? []])
-  const all = [...keys, ...captions.map(track => track.key)].filter(key => key != null && key !== '') as string[]
-  return { keys: [...new Set(all)], unfinished }
+  return { prefixes: [...ofClips.map(clip => clipPrefix(clip.id)), ...ofTracks.map(track => trackPrefix(track.id))], unfinished }
+}
+
+async function removeUnder(storage: Storage, prefix: string): Promise<void> {
+  const keys: string[] = []
+  for await (const { key } of storage.list(prefix)) keys.push(key)
+  if (keys.length) await storage.remove(keys)
 }

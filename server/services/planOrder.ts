@@ -1,7 +1,7 @@
 import { eq, sql } from 'drizzle-orm'
 import { notFound } from '#shared/utils/errors'
 import type { Transaction } from '../database/client'
-import { builds, parts, steps } from '../database/schema'
+import { builds, type parts, type steps } from '../database/schema'
 
 /**
  * Holds a build's plan still until the transaction ends: numbers, names and places are decided by what

@@ -2,6 +2,7 @@ import { eq } from 'drizzle-orm'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { builds, chapters, clips, memberships, steps, uploads } from '#server/database/schema'
 import { changeBuild, createBuild, deleteBuild, listBuilds, newAddress } from '#server/services/builds'
+import { clipPrefix, trackKey } from '#server/services/objectKeys'
 import { newBuildSchema } from '#shared/schemas/builds'
 import { type TestDatabase, testDatabase } from '../support/database'
 import { makeBuild, makeChapter, makeClip, makeCues, makeMember, makeSession, makeStep, makeUser } from '../support/rows'
@@ -68,11 +69,12 @@ describe('deleting a build', () => {
     const build = await makeBuild(database(), { name: 'Heron' })
     const step = await makeStep(database(), build)
     const session = await makeSession(database(), build)
-    const clip = await makeClip(database(), session, { proxyKey: 'clips/gone/proxy.mp4' })
-    await makeCues(database(), clip, ['We glue the transom.'], { objectKey: 'captions/gone.vtt' })
+    const clip = await makeClip(database(), session)
+    const [cue] = await makeCues(database(), clip, ['We glue the transom.'])
     await makeChapter(database(), clip, { stepId: step.id })
-    for (const key of [clip.objectKey, 'clips/gone/proxy.mp4', 'captions/gone.vtt', 'clips/another/original']) await storage.storage.write(key, 'bytes', 'text/plain')
-    return { build, session, clip }
+    const keys = [clip.objectKey, `${clipPrefix(clip.id)}proxy.mp4`, trackKey(cue!.trackId)]
+    for (const key of keys) await storage.storage.write(key, 'bytes', 'text/plain')
+    return { build, session, clip, keys }
   }
 
   it('keeps everything unless its name is typed', async () => {
@@ -83,15 +85,18 @@ describe('deleting a build', () => {
   })
 
   it('removes its rows, its files and its unfinished uploads, and nobody else\'s', async () => {
-    const { build, session, clip } = await wholeBuild()
+    const { build, session, keys } = await wholeBuild()
+    await storage.storage.write('clips/another/original', 'bytes', 'text/plain')
     const half = await makeClip(database(), session, { state: 'uploading', contentHash: null })
     const uploadId = await storage.storage.beginUpload(half.objectKey, 'video/mp4')
-    await database().insert(uploads).values({ clipId: half.id, uploadId, partSizeBytes: 8_388_608, fingerprint: 'x' })
+    await database().insert(uploads).values({ clipId: half.id, uploadId, partSizeBytes: 8_388_608 })
 
-    expect(await deleteBuild(database(), storage.storage, build.id, ' Heron ')).toEqual({ leftOver: 0 })
-    for (const table of [chapters, clips, steps]) expect(await database().select().from(table).where(eq(table.buildId, build.id))).toEqual([])
+    expect(await deleteBuild(database(), storage.storage, build.id, ' Heron ')).toEqual({ storageCleared: true })
+    expect(await database().select().from(chapters).where(eq(chapters.buildId, build.id))).toEqual([])
+    expect(await database().select().from(clips).where(eq(clips.buildId, build.id))).toEqual([])
+    expect(await database().select().from(steps).where(eq(steps.buildId, build.id))).toEqual([])
     expect(await database().select().from(builds).where(eq(builds.id, build.id))).toEqual([])
-    for (const key of [clip.objectKey, 'clips/gone/proxy.mp4', 'captions/gone.vtt']) expect(await storage.storage.head(key)).toBeNull()
+    for (const key of keys) expect(await storage.storage.head(key)).toBeNull()
     expect(await storage.storage.head('clips/another/original')).not.toBeNull()
     expect(await storage.storage.listParts(half.objectKey, uploadId)).toBeNull()
   })

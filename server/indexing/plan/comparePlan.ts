@@ -1,6 +1,6 @@
 import type { FieldChange, PreviewRow } from '#shared/types/planImport'
 import type { PartView, PlanView, StepView } from '#shared/types/plan'
-import { hoursText } from './writePlan'
+import { hoursText } from '#shared/utils/hours'
 import type { StepRow } from './readPlan'
 
 /** One row of a table beside the step it would make or change. `partNames` are as the parts list writes them. */

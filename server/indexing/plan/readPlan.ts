@@ -1,7 +1,8 @@
 import { partFields, stepFields } from '#shared/schemas/plan'
 import { distinct } from '#shared/schemas/text'
 import type { TableInfo, TableProblem } from '#shared/types/planImport'
-import { cellReader, type CellReading, checked, decimal, listOf, nameColumns, type NamedRow, problem, quoted } from './cells'
+import { parseHours } from '#shared/utils/hours'
+import { cellReader, type CellReading, checked, listOf, nameColumns, type NamedRow, problem, quoted } from './cells'
 import { STEP_COLUMNS, type StepColumn } from './columns'
 import { readTable, type Table } from './table'
 
@@ -86,8 +87,6 @@ function readPartNames(cell: string): CellReading<string[]> {
 
 /** Hours as a number, kept as whole minutes. */
 function readHours(cell: string): CellReading<number | null> {
-  if (!cell.trim()) return { ok: true, value: null }
-  const hours = decimal(cell)
-  if (hours === undefined) return { ok: false, message: `${quoted(cell)} is not a number of hours. Write it as 2 or 2.5.` }
-  return checked(stepFields.plannedMinutes, Math.round(hours * 60))
+  const reading = parseHours(cell)
+  return reading.ok ? checked(stepFields.plannedMinutes, reading.minutes) : reading
 }

@@ -1,4 +1,5 @@
 import type { PartView, PlanView } from '#shared/types/plan'
+import { hoursText } from '#shared/utils/hours'
 import { PART_COLUMNS, STEP_COLUMNS } from './columns'
 import { writeMarkdownTable } from './markdownTable'
 import { FORMULA_LIKE } from './table'
@@ -30,11 +31,6 @@ function writeTable(columns: readonly string[], rows: string[][], format: TableF
 function csvCell(text: string): string {
   const cell = FORMULA_LIKE.test(text) ? `'${text}` : text
   return /[",\n;\t|]/.test(cell) ? `"${cell.replace(/"/g, '""')}"` : cell
-}
-
-/** Minutes as hours with at most three decimals, which is fine enough to come back as the same minutes: 150 → `2.5`, 20 → `0.333`. */
-export function hoursText(minutes: number | null): string {
-  return minutes === null ? '' : String(Math.round(minutes / 60 * 1000) / 1000)
 }
 
 export function amountText(amount: number | null): string {

@@ -7,7 +7,7 @@ export default apiHandler(async (event) => {
   const account = await whoAsks(event)
   await requireBuild(db(), account?.id ?? null, 'build', id, 'run')
   const { name } = await readBodyAs(event, deleteBuildSchema)
-  const { leftOver } = await deleteBuild(db(), store(), id, name)
-  if (leftOver) console.warn(`[${event.context.requestId ?? '-'}] build ${id} is deleted, but ${leftOver} of its files could not be removed from the storage`)
+  const { storageCleared } = await deleteBuild(db(), store(), id, name)
+  if (!storageCleared) console.warn(`[${event.context.requestId ?? '-'}] build ${id} is deleted, but not all of its files could be removed from the storage`)
   return { deleted: true }
 })

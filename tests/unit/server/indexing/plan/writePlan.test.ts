@@ -36,16 +36,16 @@ describe('what is exported comes back the same', () => {
       const { placings, newParts, staying } = comparePlan(before, reading.steps)
       expect(placings.map(placing => placing.preview.changes)).toEqual(before.steps.map(() => []))
       expect([newParts, staying]).toEqual([[], []])
-    }), { numRuns: 400 })
-  })
+    }), { numRuns: 150 })
+  }, 60_000)
 
   it('parts, in both formats', () => {
     fc.assert(fc.property(partList.filter(parts => parts.length > 0), format, (before, as) => {
       const reading = readParts(Buffer.from(writeParts(before, as)))
       expect(reading.problems).toEqual([])
       expect(compareParts(before, reading.parts).placings.map(placing => placing.preview.outcome)).toEqual(before.map(() => 'same'))
-    }), { numRuns: 400 })
-  })
+    }), { numRuns: 150 })
+  }, 60_000)
 })
 
 describe('the file itself', () => {
