@@ -39,9 +39,10 @@ function pairOne(captionName: string, byStem: Map<string, string[]>): CaptionPai
     const dot = stem.lastIndexOf('.')
     const last = stem.slice(dot + 1)
     if (dot <= 0) break
-    if (NOTES.has(last.toLowerCase())) { /* says nothing about the language */ }
-    else if (language === null && LANGUAGE.test(last)) language = tidyLanguage(last)
-    else break
+    if (!NOTES.has(last.toLowerCase())) {
+      if (language !== null || !LANGUAGE.test(last)) break
+      language = tidyLanguage(last)
+    }
     stem = stem.slice(0, dot)
   }
   return { captionName, clipName: null, language }

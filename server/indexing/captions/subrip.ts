@@ -97,6 +97,7 @@ function collectText(lines: string[], from: number, end: number, warnings: Warni
 const MARKUP = /<(\/?)([A-Za-z][\w.:-]*)(\s[^<>]*|\/)?>|\{\\[^{}]*\}/g
 
 function plainSrtLine(line: string): { text: string, foreignTag?: string } {
+  if (!/[<{&]/.test(line)) return { text: line }
   let foreignTag: string | undefined
   const text = line.replace(MARKUP, (tag: string, _slash: string | undefined, name: string | undefined) => {
     if (name !== undefined && !LOOKS_TAGS.has(name.toLowerCase().split('.')[0]!)) foreignTag ??= tag

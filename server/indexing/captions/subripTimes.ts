@@ -14,7 +14,7 @@ const CLOCK = /^\s*(-?)\s*(?:(\d{1,9})\s*:\s*)?(\d{1,2})\s*:\s*(\d{1,2})(?:\s*[,
  */
 export function parseSrtTimes(line: string): ReadTimes | undefined {
   const arrow = line.indexOf('-->')
-  if (arrow < 0) return undefined
+  if (arrow < 0 || !/\d/.test(line)) return undefined
   // Lines of times are short; a megabyte with an arrow somewhere is text.
   const left = line.slice(Math.max(0, arrow - 60), arrow).replace(/-+$/, '')
   const right = line.slice(arrow + 3, arrow + 60)

@@ -15,7 +15,6 @@ import { excerpt, type WarningList } from './warnings'
 /** Times beyond this cannot be kept exactly; the algorithm itself has no limit. */
 const MAX_MS = Number.MAX_SAFE_INTEGER
 
-const BLANK = /[ \t\n\f\r]/
 const NAMED_BLOCK = /^(?:NOTE|STYLE|REGION)(?:[ \t]|$)/
 
 /** True when text (with its byte order mark removed) has the WebVTT signature. */
@@ -98,51 +97,27 @@ function warnNoTime(warnings: WarningList, index: number, buffer: string[]): voi
   warnings.add(() => `Line ${index + 1}: “${excerpt(buffer[0] ?? '')}” has no times, so it was left out.`)
 }
 
-/** "Collect WebVTT cue timings and settings", without the settings. */
+/**
+ * "Collect WebVTT cue timings and settings", without the settings: whitespace, a timestamp, whitespace, an
+ * arrow, whitespace, a timestamp, and anything. Each part can match in one way only, so it is linear.
+ */
+const TIMESTAMP = String.raw`(\d+):(\d\d)(?!\d)(?::(\d\d)(?!\d))?\.(\d{3})(?!\d)`
+const SPACE = String.raw`[ \t\n\f\r]*`
+const TIMINGS = new RegExp(`^${SPACE}${TIMESTAMP}${SPACE}-->${SPACE}${TIMESTAMP}`)
+
 function collectTimings(line: string): { startMs: number, endMs: number } | undefined {
-  const start = collectTimestamp(line, skipWhitespace(line, 0))
-  if (!start) return undefined
-  const arrow = skipWhitespace(line, start.position)
-  if (!line.startsWith('-->', arrow)) return undefined
-  const end = collectTimestamp(line, skipWhitespace(line, arrow + 3))
-  return end && { startMs: start.ms, endMs: end.ms }
+  const match = TIMINGS.exec(line)
+  if (!match) return undefined
+  const startMs = milliseconds(match[1]!, match[2]!, match[3], match[4]!)
+  const endMs = milliseconds(match[5]!, match[6]!, match[7], match[8]!)
+  return startMs === undefined || endMs === undefined ? undefined : { startMs, endMs }
 }
 
-function skipWhitespace(line: string, position: number): number {
-  while (position < line.length && BLANK.test(line[position]!)) position++
-  return position
-}
-
-/** "Collect a WebVTT timestamp" from `position`; undefined where the algorithm returns an error. */
-function collectTimestamp(line: string, position: number): { ms: number, position: number } | undefined {
-  const fields: string[] = []
-  const digits = (): string => {
-    const from = position
-    while (position < line.length && line[position]! >= '0' && line[position]! <= '9') position++
-    return line.slice(from, position)
-  }
-  const mark = (expected: string): boolean => line[position] === expected && ++position > 0
-
-  const leading = digits()
-  if (leading === '') return undefined
-  fields.push(leading)
-  const hoursLead = leading.length !== 2 || Number(leading) > 59
-  if (!mark(':')) return undefined
-  fields.push(digits())
-  if (fields[1]!.length !== 2) return undefined
-  if (hoursLead || line[position] === ':') {
-    if (!mark(':')) return undefined
-    fields.push(digits())
-    if (fields[2]!.length !== 2) return undefined
-  }
-  else {
-    fields.unshift('0')
-  }
-  if (!mark('.')) return undefined
-  const thousandths = digits()
-  if (thousandths.length !== 3) return undefined
-  const [hours, minutes, seconds] = fields.map(Number) as [number, number, number]
+/** The last steps of "collect a WebVTT timestamp"; undefined where it returns an error. */
+function milliseconds(first: string, second: string, third: string | undefined, thousandths: string): number | undefined {
+  // Without hours the first number is minutes, and must look like them: two digits, up to 59.
+  if (third === undefined && first.length !== 2) return undefined
+  const [hours, minutes, seconds] = third === undefined ? [0, Number(first), Number(second)] : [Number(first), Number(second), Number(third)]
   if (minutes > 59 || seconds > 59) return undefined
-  const ms = hours * 3_600_000 + minutes * 60_000 + seconds * 1000 + Number(thousandths)
-  return { ms: Math.min(ms, MAX_MS), position }
+  return Math.min(hours * 3_600_000 + minutes * 60_000 + seconds * 1000 + Number(thousandths), MAX_MS)
 }

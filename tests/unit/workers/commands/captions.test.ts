@@ -25,7 +25,8 @@ function run(...args: string[]): Promise<{ code: number, stdout: string, stderr:
 
 const oneLine = expect.stringMatching(/^[^\n]+\n$/)
 
-describe('the captions command', () => {
+// Each run starts Node and tsx anew.
+describe('the captions command', { timeout: 60_000 }, () => {
   it('prints JSON in exactly this form, in the order of a player', async () => {
     const path = await file('a.vtt', 'WEBVTT\n\n00:02.000 --> 00:03.000\nlater\n\nfirst\n00:00.000 --> 00:01.000\n<b>one</b>\ntwo\n')
     expect(await run(path, '--json')).toEqual({
