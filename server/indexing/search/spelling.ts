@@ -30,11 +30,15 @@ export function forgiven(word: string): number {
 
 export interface SpelledWord { word: string, /** How often it is said. */ count: number }
 
-/** The words nearest to what was typed, likeliest first: fewest slips, then the same first letter, then said most often. */
+/**
+ * The words nearest to what was typed, likeliest first: fewest slips, then said most often. The first letter is
+ * hardly ever mistyped, and words that differ in it ("reach", "each") are mostly both meant.
+ */
 export function nearest(typed: string, vocabulary: SpelledWord[], most = forgiven(typed)): SpelledWord[] {
   return vocabulary
-    .map(entry => ({ entry, distance: slips(typed, entry.word, most), first: entry.word[0] === typed[0] ? 0 : 1 }))
+    .filter(entry => entry.word[0] === typed[0])
+    .map(entry => ({ entry, distance: slips(typed, entry.word, most) }))
     .filter(({ distance }) => distance > 0 && distance <= most)
-    .sort((a, b) => a.distance - b.distance || a.first - b.first || b.entry.count - a.entry.count || (a.entry.word < b.entry.word ? -1 : 1))
+    .sort((a, b) => a.distance - b.distance || b.entry.count - a.entry.count || (a.entry.word < b.entry.word ? -1 : 1))
     .map(({ entry }) => entry)
 }

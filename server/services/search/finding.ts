@@ -10,6 +10,8 @@ import { builds, chapterParts, chapters, clips, memberships, passages, sessions 
 const MOST_CANDIDATES = 240
 /** A stricter reading that finds this many needs no looser one. */
 const ENOUGH = 40
+/** Passages of one concept beyond which it is too common to be searched for by itself. */
+const MOST_LOOSE = 4_000
 
 export interface Filters { buildId?: string, stepId?: string, partId?: string, operation?: Operation, from?: string, to?: string }
 /** Who asks: `inkedOnly` on one build, or an account (null: guest) over all builds. */
@@ -51,7 +53,7 @@ export function readings(question: Understanding, frequencies: Frequencies, filt
     ...('inkedOnly' in seer ? seer.inkedOnly : seer.userId === null) ? [lexeme('i:1')] : [],
   ]
   const rarestFirst = question.concepts
-    .map(concept => ({ said: saidQuery(concept), tagged: tagQuery(concept), weight: weightOfConcept(concept, frequencies), heard: isHeard(concept, frequencies) }))
+    .map(concept => ({ said: saidQuery(concept), tagged: tagQuery(concept), weight: weightOfConcept(concept, frequencies), heard: isHeard(concept, frequencies), count: countOf(concept, frequencies) }))
     .filter(concept => concept.said || concept.tagged)
     // A word that nobody says is the first to be let go, however telling it would be.
     .sort((a, b) => Number(b.heard) - Number(a.heard) || b.weight - a.weight)
@@ -64,6 +66,8 @@ export function readings(question: Understanding, frequencies: Frequencies, filt
     { text: join(rarestFirst.map(any)), whole: true },
     // Four readings more at most: a long question is not worth a long search.
     ...rarestFirst.slice(1).map((_, dropped) => ({ text: join(rarestFirst.slice(0, rarestFirst.length - 1 - dropped).map(any)), whole: true })).slice(-4),
+    // Last, any of the telling words, while they are few enough to be looked through.
+    ...rarestFirst.length > 2 ? [{ text: join([either(rarestFirst.filter(concept => concept.said && concept.count <= MOST_LOOSE).map(any))]), whole: true }] : [],
   ]
   return list.filter((reading, i) => list.findIndex(other => other.text === reading.text) === i)
 }
@@ -71,6 +75,11 @@ export function readings(question: Understanding, frequencies: Frequencies, filt
 /** False for a word that is neither said nor, as far as a word can tell, tagged. */
 export function isHeard(concept: Concept, frequencies: Frequencies): boolean {
   return concept.kind !== 'word' || concept.ways.some(way => way.finds && way.stems.every(stem => frequencies.of.get(stem)))
+}
+
+/** Passages that say the concept, at most. */
+function countOf(concept: Concept, frequencies: Frequencies): number {
+  return concept.ways.filter(way => way.finds).reduce((sum, way) => sum + Math.min(...way.stems.map(stem => frequencies.of.get(stem) ?? 0)), 0)
 }
 
 function saidQuery(concept: Concept): string | null {

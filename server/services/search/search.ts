@@ -70,7 +70,8 @@ async function readSpelling(executor: Executor, q: string, plan: SearchPlan, bui
   const spelling = new Map<string, string>()
   for (const token of unknown) {
     if (said.of.get(token.stem) || !forgiven(token.word)) continue
-    const likely = nearest(token.word, [...known, ...await readLookalikes(executor, token.stem, buildId)])[0]
+    // Four letters are near to too many others: only a word of the plan or the trade is read instead.
+    const likely = nearest(token.word, token.word.length > 4 ? [...known, ...await readLookalikes(executor, token.stem, buildId)] : known)[0]
     if (likely) spelling.set(token.stem, likely.word)
   }
   return spelling
