@@ -1,0 +1,52 @@
+/** A horizontal band of the strip, in CSS pixels from its top. */
+export interface Band { top: number, height: number }
+
+export interface StripLayout {
+  width: number
+  height: number
+  /** Where the sheer may rise and fall. */
+  sheer: Band
+  /** Captions: ticks, or their words when there is room. */
+  words: Band
+  lanes: { planks: Band, pictures: Band }[]
+  /** The base line that stations stand on. */
+  base: number
+  stationTimes: Band
+  scale: Band
+}
+
+/** On windows up to this width the strip is drawn for a phone: lower pictures, planks as high as a fingertip. */
+export const NARROW_PX = 559
+
+/** Heights depend only on the number of bands and on being narrow, so that nothing moves while footage loads. */
+export function layoutStrip(lanes: number, width: number, narrow: boolean): StripLayout {
+  const many = lanes > 2
+  const sheer = { top: 12, height: narrow ? 64 : 84 }
+  const words = { top: sheer.top + sheer.height + 4, height: 20 }
+  const plankHeight = narrow ? 44 : many ? 34 : 40
+  const pictureHeight = narrow || many ? 42 : 56
+  let top = words.top + words.height + 4
+  const bands = Array.from({ length: Math.max(1, lanes) }, () => {
+    const band = { planks: { top, height: plankHeight }, pictures: { top: top + plankHeight + 5, height: pictureHeight } }
+    top += plankHeight + 5 + pictureHeight + 12
+    return band
+  })
+  const base = top - 4
+  return {
+    width, sheer, words, lanes: bands, base,
+    stationTimes: { top: base + 4, height: 22 },
+    scale: { top: base + 28, height: 24 },
+    height: base + 54,
+  }
+}
+
+/** What lies under a point, by height alone. */
+export function zoneAt(layout: StripLayout, y: number): { zone: 'sheer' | 'planks' | 'pictures' | 'foot', lane: number } {
+  if (y >= layout.base) return { zone: 'foot', lane: 0 }
+  for (const [lane, band] of layout.lanes.entries()) {
+    if (y < band.planks.top) return lane === 0 ? { zone: 'sheer', lane } : { zone: 'pictures', lane: lane - 1 }
+    if (y < band.pictures.top) return { zone: 'planks', lane }
+    if (y < band.pictures.top + band.pictures.height) return { zone: 'pictures', lane }
+  }
+  return { zone: 'pictures', lane: layout.lanes.length - 1 }
+}

@@ -1,0 +1,7 @@
+import { createApp } from 'vue'
+import '@fontsource-variable/familjen-grotesk/wght.css'
+import '@fontsource-variable/sofia-sans-semi-condensed/wght.css'
+import '../../../app/assets/main.css'
+import Harness from './Harness.vue'
+
+createApp(Harness).mount('#app')
