@@ -29,8 +29,10 @@ export async function signHeaders(request: PlainRequest, keys: SigningKeys, sign
 }
 
 export async function presign(request: PlainRequest, keys: SigningKeys, expiresIn: number, signingDate = new Date()): Promise<PlainRequest> {
-  const signed = await signerFor(keys).presign(asHttp({ ...request, headers: { ...request.headers, 'x-amz-content-sha256': 'UNSIGNED-PAYLOAD' } }), { expiresIn, signingDate, unsignableHeaders: new Set(['x-amz-content-sha256']) })
-  return { ...request, headers: request.headers, query: signed.query as Record<string, string> }
+  const hash = { 'x-amz-content-sha256': 'UNSIGNED-PAYLOAD' }
+  const own = new Set(Object.keys(hash))
+  const signed = await signerFor(keys).presign(asHttp({ ...request, headers: { ...request.headers, ...hash } }), { expiresIn, signingDate, unsignableHeaders: own, unhoistableHeaders: own })
+  return { ...request, query: signed.query as Record<string, string> }
 }
 
 export function targetOf(request: PlainRequest): string {
