@@ -56,7 +56,7 @@ async function browser(title, project) {
 const phases = {
   lint: async () => {
     count(await run('types of Nuxt', bin('nuxt'), ['prepare']))
-    count(await run('lint', bin('eslint'), ['.', '--max-warnings=0']))
+    count(await run('lint', process.execPath, ['--import', './workers/groupBy.mjs', 'node_modules/eslint/bin/eslint.js', '.', '--max-warnings=0']))
   },
   types: async () => count(await run('type check', bin('vue-tsc'), ['-b', '--noEmit'])),
   unit: () => vitest('unit tests', ['--project=unit', '--project=components']),

@@ -12,7 +12,6 @@ const entry = fileURLToPath(new URL('../../workers/start.mjs', import.meta.url))
 export async function startProduct(options: { dataDir?: string, env?: Record<string, string> } = {}): Promise<Product> {
   const dataDir = options.dataDir ?? mkdtempSync(join(tmpdir(), 'ribband-product-'))
   chmodSync(dataDir, 0o755)
-  // Ports are the operating system's choice: a developer's own site may be running.
   const child = fork(entry, [], {
     env: { ...process.env, RIBBAND_DATA: dataDir, RIBBAND_LIMIT_SCALE: '1000', ...options.env },
     stdio: ['ignore', 'pipe', 'pipe', 'ipc'],

@@ -44,7 +44,7 @@ export async function startDatabase(options: LocalDatabaseOptions): Promise<Loca
     'jit=off', 'log_min_messages=fatal', 'random_page_cost=1.1',
     ...(options.disposable ? ['fsync=off', 'synchronous_commit=off', 'full_page_writes=off'] : []),
   ].flatMap(setting => ['-c', setting])
-  const [command, ...prefix] = [...runAs, join(bin, 'postgres')] as [string, ...string[]]
+  const [command = '', ...prefix] = [...runAs, join(bin, 'postgres')]
   const child = spawn(command, [...prefix, '-D', options.dataDir, '-p', String(port), ...settings], { stdio: ['ignore', 'ignore', 'pipe'], cwd: '/' })
   let log = ''
   child.stderr!.on('data', chunk => log = (log + chunk).slice(-4000))
@@ -111,7 +111,7 @@ function initialise(bin: string, runAs: string[], dataDir: string, passwordFile:
     for (const path of [dataDir, temporary, passwordCopy]) chownSync(path, uid!, gid!)
   }
   try {
-    const [command, ...prefix] = [...runAs, join(bin, 'initdb')] as [string, ...string[]]
+    const [command = '', ...prefix] = [...runAs, join(bin, 'initdb')]
     execFileSync(command, [...prefix, '-D', dataDir, '-U', 'ribband', '-E', 'UTF8', '--locale=C.UTF-8', '--auth=scram-sha-256', `--pwfile=${passwordCopy}`, '--no-instructions'], { stdio: ['ignore', 'ignore', 'pipe'], cwd: '/' })
   }
   catch (error) {
