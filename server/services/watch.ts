@@ -1,0 +1,116 @@
+import { and, asc, eq, isNull, sql } from 'drizzle-orm'
+import type { WatchBuild, WatchHead, WatchList, WatchListed, WatchMoment, WatchStep } from '#shared/types/watch'
+import type { Units } from '#shared/types/trade'
+import { notFound } from '#shared/utils/errors'
+import type { Executor } from '../database/client'
+import { type Build, builds, memberships, parts, stepParts, steps, users } from '../database/schema'
+import { examplesFor } from './search/instead'
+import { maySeeBuild } from './access'
+import { publishedChapters, type PublishedChapter, publishedClips, publishedLines } from './watchFootage'
+
+/**
+ * The public face of builds. Everything here shows inked chapters only, the clips under them and the captions
+ * within them, whoever asks: a builder sees what the world would see.
+ */
+
+/** Public builds, the fullest first. Unlisted ones are reached by their link alone. */
+export async function watchList(executor: Executor, siteUrl: string): Promise<WatchList> {
+  const rows = await executor.select().from(builds).where(eq(builds.visibility, 'public')).orderBy(asc(builds.name)).limit(200)
+  const list: WatchListed[] = []
+  for (const build of rows) {
+    const chapters = await publishedChapters(executor, build.id)
+    const [{ count }] = (await executor.select({ count: sql<number>`count(*)::int` }).from(steps).where(and(eq(steps.buildId, build.id), isNull(steps.archivedAt)))) as [{ count: number }]
+    list.push({
+      address: build.address, name: build.name, boat: build.boat, about: build.about, steps: count,
+      stepsShown: new Set(chapters.flatMap(chapter => chapter.step?.number ?? [])).size, shownMs: shownMs(chapters), picture: longest(chapters)?.picture ?? null,
+    })
+  }
+  return { builds: list.sort((a, b) => b.shownMs - a.shownMs || a.name.localeCompare(b.name)), canonical: `${siteUrl}/watch` }
+}
+
+export async function watchBuild(executor: Executor, userId: string | null, address: string, siteUrl: string): Promise<WatchBuild> {
+  const { build, head } = await requireWatched(executor, userId, address, siteUrl, '')
+  const chapters = await publishedChapters(executor, build.id)
+  const rows = await executor.select({ number: steps.number, title: steps.title, stage: steps.stage }).from(steps).where(and(eq(steps.buildId, build.id), isNull(steps.archivedAt))).orderBy(asc(steps.position))
+  const stages: WatchBuild['stages'] = []
+  for (const step of rows) {
+    if (stages.at(-1)?.name !== step.stage) stages.push({ name: step.stage, steps: [] })
+    const own = chapters.filter(chapter => chapter.step?.number === step.number)
+    stages.at(-1)!.steps.push({ number: step.number, title: step.title, chapters: own.length, shownMs: shownMs(own), picture: longest(own)?.picture ?? null })
+  }
+  const [owner] = await executor.select({ name: users.name }).from(memberships).innerJoin(users, eq(users.id, memberships.userId)).where(and(eq(memberships.buildId, build.id), eq(memberships.role, 'builder'))).orderBy(asc(memberships.createdAt)).limit(1)
+  const cover = longest(chapters)
+  return { ...head, builder: owner?.name ?? '', stages, shownMs: shownMs(chapters), picture: cover?.picture ?? null, cover: coverOf(cover, siteUrl), examples: await examplesFor(executor, build.id) }
+}
+
+export async function watchStep(executor: Executor, userId: string | null, address: string, number: number, siteUrl: string): Promise<WatchStep> {
+  const { build, head } = await requireWatched(executor, userId, address, siteUrl, `/steps/${number}`)
+  const all = await executor.select().from(steps).where(and(eq(steps.buildId, build.id), isNull(steps.archivedAt))).orderBy(asc(steps.position))
+  const at = all.findIndex(step => step.number === number)
+  const step = all[at]
+  if (!step) throw notFound('That step')
+  const chapters = (await publishedChapters(executor, build.id)).filter(chapter => chapter.step?.number === number)
+  const named = await executor.select({ name: parts.name, material: parts.material, thicknessMm: parts.thicknessMm, quantity: parts.quantity })
+    .from(stepParts).innerJoin(parts, eq(parts.id, stepParts.partId)).where(and(eq(stepParts.stepId, step.id), isNull(parts.archivedAt))).orderBy(asc(parts.position))
+  const beside = (index: number) => all[index] ? { number: all[index].number, title: all[index].title } : null
+  return {
+    ...head,
+    step: { number, title: step.title, stage: step.stage, description: step.description, materials: step.materials, parts: named },
+    chapters: chapters.map(toPublic),
+    clips: await publishedClips(executor, [...new Set(chapters.map(chapter => chapter.clipId))]),
+    previous: beside(at - 1), next: beside(at + 1), cover: coverOf(longest(chapters), siteUrl),
+  }
+}
+
+export async function watchMoment(executor: Executor, userId: string | null, address: string, clipId: string, siteUrl: string): Promise<WatchMoment> {
+  const { build, head } = await requireWatched(executor, userId, address, siteUrl, `/moments/${clipId}`)
+  const chapters = await publishedChapters(executor, build.id, clipId)
+  const [clip] = chapters.length ? await publishedClips(executor, [clipId]) : []
+  if (!clip) throw notFound('That moment')
+  return { ...head, clip, chapters: chapters.map(toPublic), lines: await publishedLines(executor, clipId), cover: coverOf(longest(chapters), siteUrl) }
+}
+
+/** Public builds and the numbers of their steps that are shown, for the sitemap. */
+export async function listedPages(executor: Executor): Promise<{ path: string, changed: Date }[]> {
+  const rows = await executor.select().from(builds).where(eq(builds.visibility, 'public')).orderBy(asc(builds.createdAt))
+  const pages: { path: string, changed: Date }[] = []
+  for (const build of rows) {
+    const chapters = await publishedChapters(executor, build.id)
+    const latest = (list: PublishedChapter[]) => new Date(Math.max(build.updatedAt.getTime(), ...list.map(chapter => chapter.changed.getTime())))
+    pages.push({ path: `/watch/${build.address}`, changed: latest(chapters) })
+    for (const number of new Set(chapters.flatMap(chapter => chapter.step?.number ?? []))) pages.push({ path: `/watch/${build.address}/steps/${number}`, changed: latest(chapters.filter(chapter => chapter.step?.number === number)) })
+    for (const clipId of new Set(chapters.map(chapter => chapter.clipId))) pages.push({ path: `/watch/${build.address}/moments/${clipId}`, changed: latest(chapters.filter(chapter => chapter.clipId === clipId)) })
+  }
+  return pages
+}
+
+async function requireWatched(executor: Executor, userId: string | null, address: string, siteUrl: string, path: string): Promise<{ build: Build & { units: Units }, head: WatchHead }> {
+  const [row] = await executor.select({ build: builds }).from(builds)
+    .leftJoin(memberships, and(eq(memberships.buildId, builds.id), userId ? eq(memberships.userId, userId) : sql`false`))
+    .where(and(eq(builds.address, address), maySeeBuild(userId)))
+  if (!row) throw notFound('That build')
+  const { build } = row
+  return {
+    build,
+    head: {
+      build: { id: build.id, address: build.address, name: build.name, boat: build.boat, about: build.about },
+      listed: build.visibility === 'public', canonical: `${siteUrl}/watch/${build.address}${path}`,
+    },
+  }
+}
+
+const shownMs = (chapters: PublishedChapter[]) => chapters.filter(chapter => chapter.operation !== 'none').reduce((sum, chapter) => sum + chapter.endMs - chapter.startMs, 0)
+
+/** The chapter that stands for several: the longest of those that show work. */
+function longest(chapters: PublishedChapter[]): PublishedChapter | undefined {
+  const worth = (chapter: PublishedChapter) => (chapter.operation === 'none' || !chapter.picture ? 0 : 1) * (chapter.endMs - chapter.startMs)
+  return chapters.reduce<PublishedChapter | undefined>((best, chapter) => !best || worth(chapter) > worth(best) ? chapter : best, undefined)
+}
+
+function coverOf(chapter: PublishedChapter | undefined, siteUrl: string): string | null {
+  return chapter?.hasPoster ? `${siteUrl}/media/clips/${chapter.clipId}/poster` : null
+}
+
+function toPublic({ hasPoster: _, changed: __, ...chapter }: PublishedChapter) {
+  return chapter
+}
