@@ -1,0 +1,15 @@
+/** A calendar day for people, the same on server and page: '2026-09-05' → 'Sat 5 Sep 2026'. */
+export function formatDay(date: string): string {
+  const day = new Date(`${date}T12:00:00Z`)
+  if (Number.isNaN(day.getTime())) return date
+  return new Intl.DateTimeFormat('en-GB', { weekday: 'short', day: 'numeric', month: 'short', year: 'numeric', timeZone: 'UTC' }).format(day).replace(',', '')
+}
+
+/** A length of footage for lists: '48 s', '12 min', '3 h 05 min'. */
+export function formatFootage(ms: number): string {
+  const seconds = Math.round(ms / 1000)
+  if (seconds < 60) return `${seconds} s`
+  const minutes = Math.round(seconds / 60)
+  if (minutes < 60) return `${minutes} min`
+  return `${Math.floor(minutes / 60)} h ${String(minutes % 60).padStart(2, '0')} min`
+}
