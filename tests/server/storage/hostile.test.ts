@@ -179,6 +179,22 @@ describe('bodies', () => {
   })
 })
 
+describe('readers', () => {
+  it('that leave or stall midway leave others and overwriting alone', async () => {
+    const [first, second] = [randomBytes(8 * 1024 ** 2), randomBytes(1000)]
+    await target.storage.write('long', first, 'video/mp4')
+    const url = await target.storage.presignGet('long')
+    const left = new AbortController()
+    const leaving = await fetch(url, { signal: left.signal })
+    left.abort()
+    await expect(leaving.arrayBuffer()).rejects.toThrow()
+    const stalled = await fetch(url)
+    await target.storage.write('long', second, 'video/mp4')
+    expect((await target.storage.readBuffer('long')).equals(second)).toBe(true)
+    expect(Buffer.from(await stalled.arrayBuffer()).equals(first)).toBe(true)
+  })
+})
+
 describe.skipIf(isOutsideTarget)('our own server', () => {
   it('refuses what it does not do, instead of doing something else', async () => {
     expect(await send('PUT', `${base}/kept`, { acl: '' }, '<x/>')).toMatchObject({ status: 501, code: 'NotImplemented' })

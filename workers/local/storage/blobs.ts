@@ -1,13 +1,14 @@
 import { randomBytes } from 'node:crypto'
 import { link, open, readdir, rename, rm, stat, type FileHandle } from 'node:fs/promises'
 import { join } from 'node:path'
+import type { Writable } from 'node:stream'
 import { makeFolder, syncFolder } from './durable'
+import { Pump } from './pump'
 
 /** A run of bytes held in one immutable file. An object is a list of these, one for each part. */
 export interface Extent { blob: string, sizeBytes: number }
 
 const WRITE_BATCH = 1024 * 1024
-const READ_BATCH = 256 * 1024
 
 /**
  * The files that hold the bytes. Names are random, contents never change, and a file that no record
@@ -99,23 +100,25 @@ export class Blobs {
     }
   }
 
-  /** Bytes `start` to `end` (inclusive) of the extents end to end. */
-  async* read(extents: Extent[], start: number, end: number): AsyncGenerator<Buffer> {
+  /** Sends bytes `start` to `end` (inclusive) of the extents, end to end. */
+  async send(extents: Extent[], start: number, end: number, sink: Writable): Promise<void> {
+    const pump = new Pump(sink)
     for (const { extent, from, to } of slices(extents, start, end)) {
       const handle = await open(join(this.dir, extent.blob), 'r')
       try {
         for (let position = from; position <= to;) {
-          const wanted = Math.min(READ_BATCH, to - position + 1)
-          const { bytesRead, buffer } = await handle.read(Buffer.allocUnsafe(wanted), 0, wanted, position)
-          if (bytesRead === 0) throw new Error(`Stored bytes are damaged: ${extent.blob} ends early.`)
-          position += bytesRead
-          yield buffer.subarray(0, bytesRead)
+          const taken = await pump.pass((buffer) => {
+            return handle.read(buffer, 0, Math.min(buffer.length, to - position + 1), position)
+          })
+          if (taken === 0) throw new Error(`Stored bytes are damaged: ${extent.blob} ends early.`)
+          position += taken
         }
       }
       finally {
         await handle.close()
       }
     }
+    await pump.finish()
   }
 
   async sweep(used: Set<string>): Promise<number> {

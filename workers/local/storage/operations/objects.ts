@@ -1,4 +1,3 @@
-import { pipeline } from 'node:stream/promises'
 import { openBody } from '../body'
 import { assertMayWrite, mayRead, rangeStillValid, type Validators } from '../conditions'
 import { sendEmpty, sendXml, type Exchange } from '../context'
@@ -111,7 +110,7 @@ export async function getObject(exchange: Exchange): Promise<void> {
     await store.blobs.check(record.extents, start, end)
     response.writeHead(range.kind === 'part' ? 206 : 200, headers)
     if (request.method === 'HEAD') response.end()
-    else await pipeline(store.blobs.read(record.extents, start, end), response)
+    else await store.blobs.send(record.extents, start, end, response)
   }
   finally {
     unpin()
