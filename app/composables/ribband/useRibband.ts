@@ -4,6 +4,8 @@ import { formatClock } from '#shared/utils/time/clock'
 import { clipAt, nearestClip } from '#shared/utils/ribband/clock'
 import { toLine } from '#shared/utils/ribband/line'
 import { layoutStrip } from '#shared/utils/ribband/layout'
+import { toX } from '#shared/utils/ribband/scale'
+import type { ClipView } from '#shared/types/session'
 import { OPERATION_WORDS } from '#shared/utils/operations'
 import { cueAt, layChapters, layFootage, plankAt, type Strip } from '#shared/utils/ribband/strip'
 import type { ClipRange, EdgeMove, RibbandProps } from './contract'
@@ -18,10 +20,21 @@ interface Sends {
   selectRange: (range: ClipRange) => void
 }
 
+/** A clip to be read raw at drawing time, after asking to be told when what is drawn of it changes. */
+function followed(clip: ClipView): ClipView {
+  void [clip.durationMs, clip.offsetMs, clip.camera, clip.name, clip.state, clip.sheets, clip.peaks, clip.silences, clip.sceneChangesMs, clip.video]
+  return toRaw(clip)
+}
+
+export type Ribband = ReturnType<typeof useRibband>
+
 /** The session laid on the line, the part in sight, and what is done with it; nothing of the page's elements. */
 export function useRibband(props: RibbandProps, size: { width: Ref<number>, narrow: Ref<boolean> }, sends: Sends) {
-  // Thousands of captions are read raw: following each through a proxy would cost more than laying them.
-  const footage = computed(() => layFootage(toRaw(props.clips), props.cues.length > 0 ? toRaw(props.cues) : []))
+  const footage = computed(() => {
+    // Thousands of captions are read raw: following each through a proxy would cost more than laying them.
+    void props.cues.length
+    return layFootage(props.clips.map(followed), toRaw(props.cues))
+  })
   const view = useStripView(() => footage.value, () => size.width.value, () => props.atMs)
   const edges = useEdges({ strip: () => strip.value, msPerPx: () => view.view.value.msPerPx, atMs: () => props.atMs, moved: sends.moveEdge })
 
@@ -47,6 +60,10 @@ export function useRibband(props: RibbandProps, size: { width: Ref<number>, narr
   const onLine = (sessionMs: number) => toLine(footage.value.line, sessionMs)
   const selectedPlank = computed(() => strip.value.planks.flat().find(plank => plank.chapter.id === props.selectedChapterId) ?? null)
   const selectionOnLine = computed(() => props.selection ? { startMs: onLine(props.selection.inMs), endMs: onLine(props.selection.outMs) } : null)
+
+  const playheadX = computed(() => toX(view.view.value, onLine(props.atMs)))
+  /** Clip and time under the pointer, or under the finger that holds something. */
+  const hover = computed(() => actions.hover.value && actions.momentAt(actions.hover.value))
 
   /** What is at the playhead, for the words beside the strip and for screen readers. */
   const here = computed(() => {
@@ -91,5 +108,8 @@ export function useRibband(props: RibbandProps, size: { width: Ref<number>, narr
     if (plank) view.show(plank.startMs, plank.endMs)
   }
 
-  return { strip, layout, view, edges, actions, preferredLane, selectedPlank, selectionOnLine, here, frameMs, go, moveEdgeByKey, moveSelection, showChapter, onLine }
+  return {
+    strip, layout, view, edges, actions, preferredLane, selectedPlank, selectionOnLine, here, frameMs, go, moveEdgeByKey, moveSelection, showChapter, playheadX, hover,
+    clips: computed(() => footage.value.clips.map(clip => clip.clip)),
+  }
 }

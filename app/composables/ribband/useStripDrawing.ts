@@ -8,7 +8,8 @@ import { drawOverlay, type OverlayMarks } from './drawing/drawOverlay'
 import { prepare, type Pen, type Theme } from './drawing/pen'
 import { drawPictures, type SheetOf } from './drawing/drawPictures'
 import { drawPlanks, type PlankMarks } from './drawing/drawPlanks'
-import { drawSheer, drawStations, type Sounds } from './drawing/drawSheer'
+import { drawSheer, type Sounds } from './drawing/drawSheer'
+import { drawStations } from './drawing/drawStations'
 
 interface DrawingInput {
   base: Ref<HTMLCanvasElement | null>
@@ -52,8 +53,18 @@ export function useStripDrawing(input: DrawingInput) {
       const pen = penOn(input.base.value)
       if (pen) drawBase(pen)
     }
-    const pen = penOn(input.overlay.value)
-    if (pen) drawOverlay(pen, input.marks())
+    drawMoving()
+  }
+
+  function drawMoving() {
+    const marks = input.marks()
+    const canvas = input.overlay.value
+    if (!canvas) return
+    // An empty canvas would still be laid over the drawing on every frame.
+    const isEmpty = marks.selection === null && marks.guide === null && marks.hoverX === null
+    canvas.style.visibility = isEmpty ? 'hidden' : ''
+    const pen = isEmpty ? null : penOn(canvas)
+    if (pen) drawOverlay(pen, marks)
   }
 
   function drawBase(pen: Pen) {

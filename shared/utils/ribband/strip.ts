@@ -38,6 +38,8 @@ export interface Planking {
   /** Planks of each band, in order. */
   planks: Plank[][]
   stations: Station[]
+  /** Places of each band's stations on the line, in order. */
+  stationPlaces: Float64Array[]
 }
 
 /** Everything the ribband shows, laid on the line once, so that drawing only looks things up. */
@@ -74,7 +76,8 @@ export function layChapters(footage: Footage, chapters: readonly ChapterView[], 
     if (clip) planks[clip.lane]!.push(plankOf(chapter, chapter.stepId === null ? undefined : stepOf.get(chapter.stepId), { lane: clip.lane, clipLineMs: clip.lineMs }))
   }
   for (const band of planks) band.sort((a, b) => a.startMs - b.startMs)
-  return { planks, stations: stationsOf(planks, footage.byId) }
+  const stations = stationsOf(planks, footage.byId)
+  return { planks, stations, stationPlaces: planks.map((_, lane) => Float64Array.from(stations.filter(station => station.lane === lane), station => station.lineMs)) }
 }
 
 function stationsOf(planks: Plank[][], byId: Map<string, StripClip>): Station[] {

@@ -2,6 +2,6 @@ import { createApp } from 'vue'
 import '@fontsource-variable/familjen-grotesk/wght.css'
 import '@fontsource-variable/sofia-sans-semi-condensed/wght.css'
 import '../../../app/assets/main.css'
-import Harness from './Harness.vue'
+import StripHarness from './StripHarness.vue'
 
-createApp(Harness).mount('#app')
+createApp(StripHarness).mount('#app')

@@ -4,39 +4,15 @@ import { fitLabels, labelX, type Label } from '#shared/utils/ribband/marks'
 import { clockStep, finerStep, ticks, toX, viewEnd } from '#shared/utils/ribband/scale'
 import { crisp, figureFont, textWidth, type Pen } from './pen'
 
-/** The base line with its stations' times, and the scale of the drawing below. */
+/** The base line, the scale of the drawing below it, and at full size its frames. */
 export function drawFoot(pen: Pen): void {
   const { ctx, theme, strip, layout, view } = pen
   const left = Math.max(0, toX(view, 0))
   const right = Math.min(view.widthPx, toX(view, strip.line.lengthMs))
   ctx.fillStyle = theme.tone('ink')
   ctx.fillRect(left, layout.base, Math.max(0, right - left), 1.5)
-  drawStationTimes(pen)
   drawScale(pen)
   drawFrames(pen)
-}
-
-function drawStationTimes({ ctx, theme, strip, layout, view }: Pen): void {
-  const font = figureFont(theme, 13, 550)
-  const tenths = view.msPerPx < 20
-  const places = [
-    ...strip.clips.map(clip => ({ lineMs: clip.lineMs, sessionMs: clip.startMs })),
-    ...strip.stations,
-  ].sort((a, b) => a.lineMs - b.lineMs)
-  const labels = places.map((place): Label => {
-    const text = formatClock(place.sessionMs, { tenths })
-    return { lineMs: place.lineMs, text, widthPx: textWidth(ctx, text, font) }
-  })
-  ctx.font = font
-  ctx.textAlign = 'center'
-  ctx.textBaseline = 'alphabetic'
-  ctx.fillStyle = theme.tone('ink')
-  for (const label of fitLabels(labels, view.msPerPx, 12)) {
-    const x = toX(view, label.lineMs)
-    if (x < -4 || x > view.widthPx + 4) continue
-    ctx.fillRect(Math.round(x) - 0.5, layout.base, 1, 5)
-    ctx.fillText(label.text, labelX(view, label), layout.stationTimes.top + 15)
-  }
 }
 
 const BAR_PX = 4

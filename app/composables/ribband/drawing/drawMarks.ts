@@ -1,6 +1,7 @@
 import { ellipsis } from '#shared/utils/ribband/planks'
 import { lowerBound } from '#shared/utils/ribband/search'
 import { toX, viewEnd } from '#shared/utils/ribband/scale'
+import type { Strip } from '#shared/utils/ribband/strip'
 import { captionFont, crisp, figureFont, textWidth, type Pen } from './pen'
 
 /** Room a caption needs before its words are written instead of a dash. */
@@ -28,14 +29,15 @@ export function drawWords({ ctx, theme, strip, layout, view }: Pen, preferredLan
     if (x2 - x1 >= WORDS_PX) {
       if (lane !== preferredLane && strip.lanes.length > 1) continue
       const from = Math.max(x1, 0, written)
-      const text = ellipsis(cue.text.replace(/\s+/g, ' '), x2 - from - 10, part => textWidth(ctx, part, font), 3)
+      const room = toX(view, nextStart(strip, index, lane) ?? endMs + 6 * WORDS_PX * view.msPerPx) - from - 12
+      const text = ellipsis(cue.text.replace(/\s+/g, ' '), room, part => textWidth(ctx, part, font), 3)
       dashes.moveTo(crisp(x1), top + 3)
       dashes.lineTo(crisp(x1), top + height - 3)
       if (text === '') continue
       ctx.font = font
       ctx.fillStyle = theme.tone('ink-soft')
       ctx.fillText(text, from + 6, y + 4)
-      written = x2
+      written = from + textWidth(ctx, text, font)
     }
     else if (x2 > drawn + 0.5) {
       dashes.moveTo(Math.max(x1, drawn), y)
@@ -46,6 +48,14 @@ export function drawWords({ ctx, theme, strip, layout, view }: Pen, preferredLan
   ctx.strokeStyle = theme.tone('ink-faint', 0.75)
   ctx.lineWidth = 1
   ctx.stroke(dashes)
+}
+
+/** Where the next caption of the same band begins: words may run on until there. */
+function nextStart(strip: Strip, index: number, lane: number): number | null {
+  for (let next = index + 1; next < Math.min(strip.cues.length, index + 8); next++) {
+    if (strip.cues[next]!.lane === lane && strip.cues[next]!.startMs > strip.cues[index]!.startMs) return strip.cues[next]!.startMs
+  }
+  return null
 }
 
 /** Clip edges: a line through the band, and a butt strap where the next clip follows without a gap. */
@@ -60,43 +70,53 @@ export function drawJoints({ ctx, theme, strip, layout, view }: Pen): void {
       ctx.fillRect(x - 0.5, planks.top + planks.height + 1, 1, bottom - planks.top - planks.height + 2)
     }
     const x = toX(view, clip.lineMs)
-    if (clip.lineMs > 0) {
+    if (clip.lineMs > 0 && !strip.folds.some(fold => fold.lineMs === clip.lineMs)) {
       ctx.fillStyle = theme.tone('ink')
       ctx.fillRect(Math.round(x) - 6, bottom + 1, 12, 3)
     }
   }
 }
 
-const BREAK_PX = 4
+/** Half the width of a break, and its swing: slighter where breaks stand close. */
+const BREAK = { wide: 3.5, slight: 1.5, closeBelowPx: 90 }
 
 /** Long-break lines where hours without footage are left out, with how long when there is room. */
 export function drawFolds({ ctx, theme, strip, layout, view }: Pen): void {
   const top = layout.sheer.top - 8
   const bottom = layout.base
   let free = -Infinity
+  const isClose = strip.folds.some((fold, index) => index > 0 && (fold.lineMs - strip.folds[index - 1]!.lineMs) / view.msPerPx < BREAK.closeBelowPx)
   for (const [index, fold] of strip.folds.entries()) {
     const x = toX(view, fold.lineMs)
     if (x < -20 || x > view.widthPx + 20) continue
     const next = strip.folds[index + 1]
     const room = (next ? toX(view, next.lineMs) : view.widthPx) - x
-    const edge = (offset: number, ctxOrPath: Path2D) => breakCurve(ctxOrPath, x + offset, top, bottom)
+    const half = isClose ? BREAK.slight : BREAK.wide
+    const curve = (path: Path2D, offset: number, from: number, to: number) => {
+      for (let part = 0; part <= 40; part++) {
+        const y = from + (to - from) * part / 40
+        path.lineTo(x + offset + Math.sin((y - top) / (bottom - top) * Math.PI * 4) * half * 0.6, y)
+      }
+    }
     const paper = new Path2D()
-    edge(-BREAK_PX, paper)
-    for (let y = bottom; y >= top; y -= 4) paper.lineTo(x + BREAK_PX + swing(y - top, bottom - top), y)
+    curve(paper, -half, top, bottom)
+    curve(paper, half, bottom, top)
     paper.closePath()
     ctx.fillStyle = theme.tone('sheet')
     ctx.fill(paper)
     ctx.strokeStyle = theme.tone('ink-soft')
     ctx.lineWidth = 1
-    for (const offset of [-BREAK_PX, BREAK_PX]) {
+    for (const offset of [-half, half]) {
       const line = new Path2D()
-      edge(offset, line)
+      curve(line, offset, top, bottom)
       ctx.stroke(line)
     }
     const font = figureFont(theme, 12, 450)
     const text = `${lengthWords(fold.missingMs)} later`
     const width = textWidth(ctx, text, font)
     if (x > free && width + 22 < room) {
+      ctx.fillStyle = theme.tone('sheet')
+      ctx.fillRect(x + 8, layout.sheer.top - 11, width + 5, 15)
       ctx.font = font
       ctx.textAlign = 'left'
       ctx.textBaseline = 'alphabetic'
@@ -105,15 +125,6 @@ export function drawFolds({ ctx, theme, strip, layout, view }: Pen): void {
       free = x + width + 20
     }
   }
-}
-
-function swing(y: number, height: number): number {
-  return Math.sin(y / height * Math.PI * 4) * 2.5
-}
-
-function breakCurve(path: Path2D, x: number, top: number, bottom: number): void {
-  path.moveTo(x, top)
-  for (let y = top; y <= bottom; y += 4) path.lineTo(x + swing(y - top, bottom - top), y)
 }
 
 /** '45 s', '12 min', '3 h 5 min'. */

@@ -46,8 +46,8 @@ function drawSelection(pen: Pen, { startMs, endMs }: LineRange): void {
   const rise = sheer.height + 4
   const anchor = left - Math.floor((left - from + rise) / 9) * 9
   for (let x = anchor + Math.floor((from - anchor - rise) / 9) * 9; x < to; x += 9) {
-    ctx.moveTo(x, top + rise)
-    ctx.lineTo(x + rise, top)
+    ctx.moveTo(x, top)
+    ctx.lineTo(x + rise, top + rise)
   }
   ctx.stroke()
   ctx.restore()

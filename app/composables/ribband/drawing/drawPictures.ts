@@ -74,14 +74,18 @@ function drawWithoutPictures({ ctx, theme, view }: Pen, clip: StripClip, band: B
 }
 
 const LEAST_SCENE_PX = 10
+/** Notches nearer than this on average say nothing but that there are many. */
+const WORTH_MARKING_PX = 36
 
 /** Scene changes: a notch at the top of the pictures, as a saw leaves on an edge. */
 function drawScenes({ ctx, strip, view, theme }: Pen, lane: number, band: Band): void {
+  const marks = thinMarks(strip.scenes[lane] ?? [], view, LEAST_SCENE_PX)
+  if (marks.length > view.widthPx / WORTH_MARKING_PX) return
   ctx.fillStyle = theme.tone('sheet')
   ctx.strokeStyle = theme.tone('ink-soft')
   ctx.lineWidth = 1
   ctx.beginPath()
-  for (const lineMs of thinMarks(strip.scenes[lane] ?? [], view, LEAST_SCENE_PX)) {
+  for (const lineMs of marks) {
     const x = crisp(toX(view, lineMs))
     ctx.moveTo(x - 3.5, band.top - 1)
     ctx.lineTo(x, band.top + 5)

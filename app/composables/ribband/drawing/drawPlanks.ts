@@ -62,10 +62,12 @@ function drawDashedEdge({ ctx, theme }: Pen, left: number, top: number, width: n
   ctx.strokeStyle = theme.tone('brass')
   ctx.lineWidth = 0.9 + thickness * 0.6
   if (width < 8) {
-    ctx.setLineDash([2, 2])
+    // Too narrow for dashes: its two long edges, open at the butts.
     ctx.beginPath()
-    ctx.moveTo(left + width / 2, top)
-    ctx.lineTo(left + width / 2, top + height)
+    for (const y of [top + 0.75, top + height - 0.75]) {
+      ctx.moveTo(left, y)
+      ctx.lineTo(left + width, y)
+    }
   }
   else {
     ctx.setLineDash([5, 3])

@@ -1,6 +1,5 @@
 import { toX, viewEnd, type View } from '#shared/utils/ribband/scale'
 import { fairKnots, knotSpacing, monotoneSlopes, soundAt, type SoundPyramid } from '#shared/utils/ribband/sheer'
-import { thinMarks } from '#shared/utils/ribband/marks'
 import type { Strip } from '#shared/utils/ribband/strip'
 import { crisp, type Pen } from './pen'
 
@@ -78,8 +77,10 @@ export function drawSheer({ ctx, theme, strip, layout, view }: Pen, sounds: Soun
     const whole = body(knots.high)
     ctx.fillStyle = theme.tone('well', 0.75)
     ctx.fill(whole)
-    ctx.fillStyle = theme.tone('ink', 0.2)
-    ctx.fill(body(knots.low))
+    const steady = body(knots.low)
+    ctx.fillStyle = theme.tone('ink', 0.1)
+    ctx.fill(steady)
+    drawHatching(ctx, steady, { left, right, top, foot, from: toX(view, 0), colour: theme.tone('ink', 0.3) })
     drawWaterlines(ctx, whole, { left, right, top, foot, colour: theme.tone('ink-faint', 0.34) })
     ctx.beginPath()
     traceCurve(ctx, knots.high, x0, step, y)
@@ -92,6 +93,25 @@ export function drawSheer({ ctx, theme, strip, layout, view }: Pen, sounds: Soun
   drawSilences(ctx, strip, view, crisp(foot - 5), theme.tone('ink-faint', 0.7))
   ctx.fillStyle = theme.tone('rule-strong')
   ctx.fillRect(left, foot, right - left, 1)
+}
+
+const HATCH_PX = 5
+
+/** The steady part of the sound, hatched as a drawing hatches what is solid. The lines move with the line. */
+function drawHatching(ctx: CanvasRenderingContext2D, body: Path2D, at: { left: number, right: number, top: number, foot: number, from: number, colour: string }): void {
+  const rise = at.foot - at.top
+  ctx.save()
+  ctx.clip(body)
+  ctx.strokeStyle = at.colour
+  ctx.lineWidth = 0.75
+  ctx.beginPath()
+  const first = at.left - rise - ((at.left - rise - at.from) % HATCH_PX)
+  for (let x = first; x < at.right; x += HATCH_PX) {
+    ctx.moveTo(x, at.foot)
+    ctx.lineTo(x + rise, at.top)
+  }
+  ctx.stroke()
+  ctx.restore()
 }
 
 /** Level hairlines inside the body only, as waterlines run on a lines plan. */
@@ -131,26 +151,3 @@ function drawSilences(ctx: CanvasRenderingContext2D, strip: Strip, view: View, y
   }
   ctx.stroke()
 }
-
-const STATION_LEAST_PX = 16
-
-/** Station lines where chapters meet, from above the sheer down to the base; only as many as leave the sheer readable. */
-export function drawStations({ ctx, theme, strip, layout, view }: Pen): void {
-  const bottom = layout.lanes.map(band => band.pictures.top + band.pictures.height)
-  ctx.lineWidth = 1
-  for (let lane = 0; lane < layout.lanes.length; lane++) {
-    const places = Float64Array.from(strip.stations.filter(station => station.lane === lane), station => station.lineMs)
-    ctx.strokeStyle = theme.tone('rule-strong', lane === 0 ? 0.75 : 0.4)
-    ctx.beginPath()
-    for (const lineMs of thinMarks(places, view, STATION_LEAST_PX)) {
-      const x = crisp(toX(view, lineMs))
-      const from = lane === 0 ? layout.sheer.top - 6 : layout.lanes[lane]!.planks.top - 6
-      ctx.moveTo(x, from)
-      ctx.lineTo(x, lane === 0 ? bottom[0]! + 2 : bottom[lane]! + 2)
-      ctx.moveTo(x, layout.base - 6)
-      ctx.lineTo(x, layout.base)
-    }
-    ctx.stroke()
-  }
-}
-
