@@ -216,10 +216,10 @@ describe.skipIf(isOutsideTarget)('our own server', () => {
     const url = await target.storage.presignGet('film')
     const lengthFor = async (headers: Record<string, string>) => {
       const answer = await sendRaw(target.config.endpoint, { method: 'GET', path: url.slice(target.config.endpoint.length), headers: { host: target.host, ...headers } })
-      return [answer.status, answer.body.length, answer.headers['content-range']]
+      return [answer.status, answer.body.length, answer.headers['content-range'], answer.headers['cache-control']]
     }
-    expect(await lengthFor({ 'range': 'bytes=100-', 'sec-fetch-dest': 'video' })).toEqual([206, 1024 ** 2, `bytes 100-${100 + 1024 ** 2 - 1}/${size}`])
-    expect(await lengthFor({ range: 'bytes=100-' })).toEqual([206, size - 100, `bytes 100-${size - 1}/${size}`])
-    expect(await lengthFor({ 'sec-fetch-dest': 'video' })).toEqual([200, size, undefined])
+    expect(await lengthFor({ 'range': 'bytes=100-', 'sec-fetch-dest': 'video' })).toEqual([206, 1024 ** 2, `bytes 100-${100 + 1024 ** 2 - 1}/${size}`, 'no-store'])
+    expect(await lengthFor({ range: 'bytes=100-' })).toEqual([206, size - 100, `bytes 100-${size - 1}/${size}`, 'private, max-age=3600'])
+    expect(await lengthFor({ 'sec-fetch-dest': 'video' })).toEqual([200, size, undefined, 'no-store'])
   })
 })

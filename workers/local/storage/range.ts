@@ -34,17 +34,19 @@ export function isMediaElement(headers: Record<string, string | undefined>): boo
   return headers['accept-encoding'] === 'identity;q=1, *;q=0' && (headers['user-agent'] ?? '').startsWith('Mozilla/')
 }
 
+/** Whether answers to this request are portioned. */
+export function isPortioned(headers: Record<string, string | undefined>, contentType: string, capBytes: number): boolean {
+  return capBytes > 0 && /^(?:video|audio)\//.test(contentType) && isMediaElement(headers)
+}
+
 /**
  * Shortens the answer to `bytes=N-` from a media element: it asks for everything to the end, then
  * throws most of it away at the next seek. A 206 may be shorter than asked, and the element asks again.
+ *
+ * Portions must not be cached by the browser: Chromium's cache would turn the element's next
+ * `bytes=N-` into `bytes=N-LAST`, and it takes an answer shorter than that for an error.
  */
-export function capForMedia(
-  range: ByteRange,
-  headers: Record<string, string | undefined>,
-  contentType: string,
-  capBytes: number,
-): ByteRange {
-  if (range.kind !== 'part' || !range.openEnded || capBytes <= 0) return range
-  if (!/^(?:video|audio)\//.test(contentType) || !isMediaElement(headers)) return range
+export function capForMedia(range: ByteRange, capBytes: number): ByteRange {
+  if (range.kind !== 'part' || !range.openEnded) return range
   return { ...range, end: Math.min(range.end, range.start + capBytes - 1) }
 }

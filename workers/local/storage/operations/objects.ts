@@ -2,7 +2,7 @@ import { openBody } from '../body'
 import { assertMayWrite, mayRead, rangeStillValid, type Validators } from '../conditions'
 import { sendEmpty, sendXml, type Exchange } from '../context'
 import { invalidArgument, invalidRequest, noSuchKey, S3Error } from '../errors'
-import { capForMedia, parseRange } from '../range'
+import { capForMedia, isPortioned, parseRange } from '../range'
 import { KEPT_HEADERS, type Attributes, type ObjectRecord } from '../records'
 import { parseQuery, type S3Request } from '../request'
 import { document, leaf } from '../xml'
@@ -100,7 +100,10 @@ export async function getObject(exchange: Exchange): Promise<void> {
       return
     }
     const asked = rangeStillValid(request.headers['if-range'], validatorsOf(record)) ? request.headers.range : undefined
-    const range = capForMedia(parseRange(asked, record.sizeBytes), request.headers, headers['content-type']!, options.mediaRangeCapBytes)
+    const whole = parseRange(asked, record.sizeBytes)
+    const portioned = isPortioned(request.headers, headers['content-type']!, options.mediaRangeCapBytes)
+    const range = portioned ? capForMedia(whole, options.mediaRangeCapBytes) : whole
+    if (portioned) headers['cache-control'] = 'no-store'
     if (range.kind === 'unsatisfiable') {
       throw new S3Error(416, 'InvalidRange', 'The requested range is not satisfiable', { 'content-range': `bytes */${record.sizeBytes}` })
     }

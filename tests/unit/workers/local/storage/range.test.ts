@@ -1,6 +1,6 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
-import { capForMedia, isMediaElement, parseRange } from '../../../../../workers/local/storage/range'
+import { capForMedia, isMediaElement, isPortioned, parseRange } from '../../../../../workers/local/storage/range'
 
 const part = (start: number, end: number, openEnded = false) => ({ kind: 'part', start, end, openEnded })
 
@@ -48,28 +48,29 @@ describe('parseRange', () => {
   })
 })
 
-describe('capForMedia', () => {
+describe('portions for media elements', () => {
   const element = { 'sec-fetch-dest': 'video' }
   const open = parseRange('bytes=500-', 10_000)
 
-  it('shortens what a media element asks for to the end', () => {
-    expect(capForMedia(open, element, 'video/mp4', 1000)).toMatchObject({ start: 500, end: 1499 })
-    expect(capForMedia(open, { 'sec-fetch-dest': 'audio' }, 'audio/mpeg', 1000)).toMatchObject({ end: 1499 })
+  it('shorten what is asked for to the end', () => {
+    expect(capForMedia(open, 1000)).toMatchObject({ start: 500, end: 1499 })
+    expect(capForMedia(parseRange('bytes=9900-', 10_000), 1000)).toMatchObject({ start: 9900, end: 9999 })
   })
 
-  it('does not reach past the end', () => {
-    expect(capForMedia(parseRange('bytes=9900-', 10_000), element, 'video/mp4', 1000)).toMatchObject({ start: 9900, end: 9999 })
+  it.each(['bytes=500-9000', 'bytes=-9000', 'bytes=10000-', undefined])('leave %s as it is', (header) => {
+    const range = parseRange(header, 10_000)
+    expect(capForMedia(range, 1000)).toEqual(range)
   })
 
   it.each([
-    ['a program', open, {}, 'video/mp4', 1000],
-    ['fetch()', open, { 'sec-fetch-dest': 'empty' }, 'video/mp4', 1000],
-    ['a picture', open, element, 'image/jpeg', 1000],
-    ['a closed range', parseRange('bytes=500-9000', 10_000), element, 'video/mp4', 1000],
-    ['the end of the file', parseRange('bytes=-9000', 10_000), element, 'video/mp4', 1000],
-    ['a cap that is off', open, element, 'video/mp4', 0],
-  ])('leaves %s alone', (_, range, headers, type, cap) => {
-    expect(capForMedia(range, headers, type, cap)).toEqual(range)
+    [true, 'a video element', element, 'video/mp4', 1000],
+    [true, 'an audio element', { 'sec-fetch-dest': 'audio' }, 'audio/mpeg', 1000],
+    [false, 'a program', {}, 'video/mp4', 1000],
+    [false, 'fetch()', { 'sec-fetch-dest': 'empty' }, 'video/mp4', 1000],
+    [false, 'a picture', element, 'image/jpeg', 1000],
+    [false, 'a cap that is off', element, 'video/mp4', 0],
+  ])('are given (%s) to %s', (expected, _, headers, type, cap) => {
+    expect(isPortioned(headers, type, cap)).toBe(expected)
   })
 
   it('knows a media element without fetch metadata by its codings', () => {
