@@ -1,4 +1,5 @@
-import { tokenise } from '../words/tokenise'
+import { type Token, tokenise } from '../words/tokenise'
+import { saidAt } from './rank'
 import type { Concept } from './types'
 
 /** Words in context, with the ranges (UTF-16 offsets, end exclusive) of those that were asked for. */
@@ -6,12 +7,20 @@ export interface MarkedText { text: string, marks: [start: number, end: number][
 
 /** The lines about the answer as one text, words that matched marked. */
 export function markWords(lines: string[], line: number, concepts: Concept[]): MarkedText {
-  const from = Math.max(0, line - (line > 0 ? 1 : 0))
+  const from = Math.max(0, line - 1)
   const text = lines.slice(from, from + 4).join(' ').replace(/\s+/g, ' ').trim()
-  const stems = new Set(concepts.flatMap(concept => concept.ways.filter(way => way.weight >= 0.5 || way.finds)).flatMap(way => way.stems))
+  const tokens = tokenise(text)
+  const wanted = new Set<Token>()
+  for (const way of concepts.flatMap(concept => concept.ways.filter(way => way.finds))) {
+    for (let i = 0; i < tokens.length; i++) {
+      if (!saidAt(way, tokens, undefined, i)) continue
+      // Of a phrase its words are marked, not what stands between them.
+      for (const token of tokens.slice(i, i + way.stems.length + 2)) if (way.stems.includes(token.stem)) wanted.add(token)
+    }
+  }
   const marks: [number, number][] = []
-  for (const token of tokenise(text)) {
-    if (!stems.has(token.stem)) continue
+  for (const token of tokens) {
+    if (!wanted.has(token)) continue
     const last = marks.at(-1)
     // Neighbouring words are marked as one.
     if (last && /^[\s-]+$/.test(text.slice(last[1], token.start))) last[1] = token.end

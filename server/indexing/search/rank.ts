@@ -105,13 +105,14 @@ function score<Of extends Candidate>(question: Understanding, weights: number[],
 function heardIn(concept: Concept, line: Token[], next: Token[] | undefined): number {
   let heard = 0
   for (const way of concept.ways) {
-    const first = way.stems[0]!
-    for (let i = 0; i < line.length; i++) {
-      if (line[i]!.stem !== first) continue
-      if (way.stems.length === 1 || follows(way.stems, line, next, i)) heard += way.weight
-    }
+    for (let i = 0; i < line.length; i++) if (saidAt(way, line, next, i)) heard += way.weight
   }
   return heard
+}
+
+/** True when a way is said from word `at` of a line on. */
+export function saidAt(way: Way, line: Token[], next: Token[] | undefined, at: number): boolean {
+  return line[at]!.stem === way.stems[0] && (way.stems.length === 1 || follows(way.stems, line, next, at))
 }
 
 /** The rest of a phrase within three words of its place: "chine log", "chine and the log". */

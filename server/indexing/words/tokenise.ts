@@ -53,7 +53,7 @@ export function isStopWord(word: string): boolean {
   return STOP_WORDS.has(word)
 }
 
-/** The stems of a phrase, for lexicons and names. */
+/** The stems of a phrase, for lexicons and names, without the words that are never asked for: as the index holds them. */
 export function stemsOf(text: string): string[] {
-  return tokenise(text).map(token => token.stem)
+  return tokenise(text).filter(token => !isStopWord(token.word)).map(token => token.stem)
 }
