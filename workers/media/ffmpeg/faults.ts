@@ -38,8 +38,9 @@ export function clipFault(code: ClipFailureCode, detail = '', options?: { cause?
 /**
  * Reads a failed run as a fault of the clip. Anything that is not a failed run (an abort, a bug) is passed on as it is,
  * so that the queue may try again.
+ * @param isMp4 ffmpeg takes some other files for an MP4 without index; whoever knows better says so
  */
-export function faultOf(error: unknown, otherwise: ClipFailureCode = 'damaged'): unknown {
+export function faultOf(error: unknown, otherwise: ClipFailureCode = 'damaged', isMp4 = true): unknown {
   if (!(error instanceof RunError)) return error
   const { stderr } = error
   const cause = { cause: error }
@@ -49,8 +50,7 @@ export function faultOf(error: unknown, otherwise: ClipFailureCode = 'damaged'):
   if (/max_streams/.test(stderr)) return clipFault('too-many-streams', 'more than 16 tracks', cause)
   if (/max_pixels|Picture size \d+x\d+ is invalid/.test(stderr)) return clipFault('picture-too-large', '', cause)
   if (error.reason === 'out-of-memory') return clipFault('damaged', 'reading it would take more memory than any clip should need', cause)
-  if (/moov atom not found/.test(stderr)) return clipFault('truncated', 'the index that a camera writes at the end of a recording is missing', cause)
-  if (/not on whitelist/i.test(stderr)) return clipFault('not-a-video', 'its contents are of another kind than its name says', cause)
-  if (/Invalid data found|could not find codec parameters/i.test(stderr)) return clipFault(otherwise, '', cause)
+  if (isMp4 && /moov atom not found/.test(stderr)) return clipFault('truncated', 'the index that a camera writes at the end of a recording is missing', cause)
+  if (/not on whitelist|moov atom not found/i.test(stderr)) return clipFault('not-a-video', 'its contents are of another kind than its name says', cause)
   return clipFault(otherwise, '', cause)
 }

@@ -23,6 +23,7 @@ const PROXY_HEIGHT = 720
 const GOP = 15
 /** Above this viewers see no more of a bench, and every frame costs a seek. */
 const FASTEST = 60
+const ORDINARY_RATES = [24, 25, 30, 50, 60]
 /** Largest share of the original that a proxy may take: even noise stays far below at this quality. */
 const MOST_BYTES_PER_S = 4_000_000
 
@@ -91,14 +92,20 @@ function pictureArgs(probe: ProbeResult, plan: ProxyPlan): string[] {
   // 720 across the short side, so that an upright phone clip is as sharp as a lying one.
   const upright = video.height > video.width
   const { width, height } = upright ? fitInto(video, PROXY_HEIGHT, 2560) : fitInto(video, 2560, PROXY_HEIGHT)
-  const { numerator, denominator } = video.frameRate
-  const rate = numerator / denominator > FASTEST ? String(FASTEST) : `${numerator}/${denominator}`
   return [
     // ffmpeg turns the picture by itself before these filters. `deint=interlaced` leaves other footage alone.
     '-vf', `yadif=deint=interlaced,scale=${width}:${height}:flags=bicubic,setsar=1${toOrdinaryColours(probe)}`,
-    '-fps_mode', 'cfr', '-r', rate,
+    '-fps_mode', 'cfr', '-r', evenRate(video),
     '-c:v', 'libx264', '-preset', 'veryfast', '-crf', '23', '-g', String(GOP), '-keyint_min', String(GOP), '-sc_threshold', '0', '-pix_fmt', 'yuv420p',
   ]
+}
+
+/** The clip's own rate; for an uneven one the ordinary rate above its average, so that no picture is lost. */
+function evenRate({ frameRate: { numerator, denominator }, variableFrameRate }: NonNullable<ProbeResult['video']>): string {
+  const average = numerator / denominator
+  if (average > FASTEST) return String(FASTEST)
+  if (!variableFrameRate) return `${numerator}/${denominator}`
+  return String(ORDINARY_RATES.find(rate => rate >= average * 0.99) ?? FASTEST)
 }
 
 /** Phones that record in high dynamic range look washed out on ordinary screens unless their tones are mapped. */

@@ -24,6 +24,8 @@ const KNOWN_FIRST = new Set(['ftyp', 'moov', 'mdat', 'free', 'skip', 'wide', 'pn
 const TRIFLING_S = 0.2
 const MOST_BOXES = 100_000
 const MOST_EDITS = 10_000
+/** ffprobe refuses more, with a message; looking at their edits would be wasted. */
+const MOST_TRACKS = 16
 
 /**
  * Reads the layout of an MP4 or MOV file.
@@ -78,7 +80,8 @@ async function anyRealEdit(file: FileHandle, moov: Box, size: number): Promise<b
   if (!movieScale) return false
   let tracks = 0
   for await (const trak of boxes(file, moov.body, Math.min(moov.end, size))) {
-    if (trak.type !== 'trak' || ++tracks > 64) continue
+    if (trak.type !== 'trak') continue
+    if (++tracks > MOST_TRACKS) break
     const edts = await child(file, trak, size, 'edts')
     const elst = edts && await child(file, edts, size, 'elst')
     const mdia = await child(file, trak, size, 'mdia')

@@ -41,7 +41,7 @@ export async function probeClip(path: string, options: ProbeOptions = {}): Promi
     return assemble({ format, streams, picture, sound, scan, layout, size })
   }
   catch (error) {
-    throw faultOf(error, 'not-a-video')
+    throw faultOf(error, 'not-a-video', layout !== null)
   }
 }
 
@@ -109,7 +109,8 @@ function refuseSize(picture: ProbedStream | undefined) {
   const width = picture.width ?? 0
   const height = picture.height ?? 0
   if (width * height > MAX_PIXELS) throw clipFault('picture-too-large', `${width} × ${height}`)
-  if (width < 2 || height < 2) throw clipFault('damaged', 'no picture in it can be decoded')
+  // ffprobe decodes the first pictures to learn how their colours are stored.
+  if (width < 2 || height < 2 || !picture.pix_fmt) throw clipFault('damaged', 'no picture in it can be decoded')
 }
 
 /** @throws ClipFault when data ends well before the length that the container states */

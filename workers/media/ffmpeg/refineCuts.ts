@@ -8,13 +8,20 @@ import type { Suspect } from './scenes'
 /**
  * Finds the frame at which the scene changes between two keyframes by decoding what lies between, and drops suspects
  * that turn out to be movement.
+ * Suspects beyond the budget are believed only when most of those looked at proved true, as in edited footage.
  * @param budgetMs footage that may be decoded in all
  * @returns times of cuts in ms, ascending
  */
 export async function refineCuts(input: PassInput, suspects: readonly Suspect[], budgetMs: number): Promise<number[]> {
-  const { look, takeAsIs } = splitSuspects(suspects, budgetMs)
-  const found = [...takeAsIs]
-  for (const suspect of look) found.push(...await cutsWithin(input, suspect))
+  const { look, unseenMs } = splitSuspects(suspects, budgetMs)
+  const found: number[] = []
+  let proved = 0
+  for (const suspect of look) {
+    const cuts = await cutsWithin(input, suspect)
+    if (cuts.length) proved++
+    found.push(...cuts)
+  }
+  if (proved > look.length / 2) found.push(...unseenMs)
   return [...new Set(found)].sort((a, b) => a - b)
 }
 

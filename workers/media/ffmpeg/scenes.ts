@@ -9,12 +9,20 @@ export type Histogram = Float32Array
 /** A histogram and when its picture is shown. */
 export interface Sample { timeMs: number, histogram: Histogram }
 
-/** Two pictures a moment apart: beyond this they belong to different scenes. */
-export const CUT = 0.3
+/*
+ * Thresholds measured on consecutive 64 × 36 pictures of five kinds of footage: test patterns with noise (9 cuts), drawn
+ * shop scenes of one palette from a shaking camera (7 cuts, one of them a change of angle only), and without cuts whip
+ * pans, swinging exposure, and something passing close to the lens. Cuts: difference ≥ 0.36 and ≥ 8.6 times their
+ * surroundings. Everything else: difference ≤ 0.20, or (exposure, up to 0.43) ≤ 2.8 times. Keyframes a second or two
+ * apart do not tell the kinds apart (cuts from 0.32, pans to 0.55, exposure to 0.92), so they only raise suspicion.
+ */
+
+/** Two pictures a moment apart: beyond this they may belong to different scenes. */
+export const CUT = 0.28
 /** A cut also stands out from its surroundings by this factor: in a whip pan every picture differs from the last. */
-const STANDS_OUT = 3
+const STANDS_OUT = 5
 const SURROUNDINGS = 8
-/** Two keyframes seconds apart differ by movement alone; from here on it is worth a look at what lies between. */
+/** Two keyframes differ by movement alone; from here on it is worth a look at what lies between. */
 export const WORTH_A_LOOK = 0.25
 
 /** @param rgb packed 8-bit RGB */
@@ -81,11 +89,11 @@ export class SuspectFinder {
 
 /**
  * Chooses which suspects to look into: the strongest first, as long as the footage to decode stays within a share of
- * the clip. The others count as cuts at the later keyframe when they are plain enough.
+ * the clip. The plainest of the others are returned beside them, at the later keyframe.
  */
-export function splitSuspects(suspects: readonly Suspect[], budgetMs: number): { look: Suspect[], takeAsIs: number[] } {
+export function splitSuspects(suspects: readonly Suspect[], budgetMs: number): { look: Suspect[], unseenMs: number[] } {
   const look: Suspect[] = []
-  const takeAsIs: number[] = []
+  const unseenMs: number[] = []
   let spent = 0
   for (const suspect of [...suspects].sort((a, b) => b.difference - a.difference)) {
     const length = suspect.toMs - suspect.fromMs
@@ -93,7 +101,7 @@ export function splitSuspects(suspects: readonly Suspect[], budgetMs: number): {
       spent += length
       look.push(suspect)
     }
-    else if (suspect.difference >= 1.5 * CUT) takeAsIs.push(suspect.toMs)
+    else if (suspect.difference >= 1.5 * CUT) unseenMs.push(suspect.toMs)
   }
-  return { look, takeAsIs }
+  return { look, unseenMs }
 }
