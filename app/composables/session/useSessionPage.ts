@@ -1,0 +1,71 @@
+import { computed, ref, watch } from 'vue'
+import type { PlanView } from '#shared/types/plan'
+import type { SessionAction } from '~/utils/sessionKeys'
+import { usePlayer } from '../player/usePlayer'
+import { useCaptions } from './useCaptions'
+import { useChapterEdits } from './useChapterEdits'
+import { useMarks } from './useMarks'
+import { useSessionKeys } from './useSessionKeys'
+import { useTagging } from './useTagging'
+
+/** Everything of the session page that is not its layout. */
+export function useSessionPage(buildId: string, sessionId: string) {
+  const { account } = useAccount()
+  const spoken = ref('')
+  // The same words twice are said twice: a no-break space makes them other text.
+  const say = (words: string) => spoken.value = spoken.value === words ? `${words}\u00a0` : words
+
+  const live = useLiveSession(() => sessionId, {
+    onEvent: (event) => {
+      if (event.kind === 'chapter') edits.hear(event)
+      if (event.kind === 'clip') void edits.rereadSoon()
+      if (event.kind === 'captions' || (event.kind === 'task' && event.task?.task === 'read-captions' && event.task.state === 'done')) void captions.reread()
+    },
+    onGap: () => {
+      void edits.rereadSoon()
+      void captions.reread()
+    },
+  })
+  const plan = useApiData<PlanView>(`plan:${buildId}`, () => `/api/builds/${buildId}/plan`)
+  const session = computed(() => live.session.value ?? null)
+  const clips = computed(() => session.value?.clips ?? [])
+  const steps = computed(() => plan.data.value?.steps ?? [])
+  const parts = computed(() => plan.data.value?.parts ?? [])
+
+  const edits = useChapterEdits({ sessionId, me: () => account.value?.id, steps: () => steps.value, say })
+  const captions = useCaptions(sessionId, () => session.value?.tracks ?? [])
+  const player = usePlayer(() => clips.value)
+  const marks = useMarks(player, { cues: () => captions.cues.value, chapters: () => edits.chapters.value, say })
+  const tagging = useTagging({ player, edits, marks, buildId: () => buildId, say })
+  const keysOpen = ref(false)
+
+  /** What keys and page must reach of the transcript's own parts. */
+  const reach = { find: () => {}, follow: () => {}, note: () => {} }
+
+  const act: Record<SessionAction, (event: KeyboardEvent) => void> = {
+    'toggle': player.toggle, 'back': () => player.shuttle(-1), 'pause': player.pause, 'on': () => player.shuttle(1),
+    'second-back': () => player.nudge(-1000), 'second-on': () => player.nudge(1000), 'frame-back': () => player.frame(-1), 'frame-on': () => player.frame(1),
+    'camera': () => player.nextCamera() || say('Only one camera was running here'),
+    'in': event => marks.set('in', event.altKey), 'out': event => marks.set('out', event.altKey),
+    'go-in': () => marks.goTo('in'), 'go-out': () => marks.goTo('out'),
+    'clear': () => marks.marks.value ? marks.clear() : tagging.select(null),
+    'tag': () => tagging.open(),
+    'chapter-before': () => tagging.step(-1), 'chapter-after': () => tagging.step(1),
+    'split': tagging.splitHere, 'join': tagging.joinNext, 'ink': tagging.inkIt, 'start-here': () => tagging.edgeHere('start'), 'end-here': () => tagging.edgeHere('end'),
+    'note': () => reach.note(), 'delete': tagging.deleteIt, 'undo': () => void edits.undo(), 'redo': () => void edits.redo(),
+    'find': () => reach.find(), 'follow': () => reach.follow(), 'keys': () => keysOpen.value = true,
+  }
+  useSessionKeys(act, () => clips.value.length > 0)
+
+  // A search result or a link leads to a moment: ?clip=…&at=seconds of that clip.
+  const route = useRoute()
+  watch(() => [route.query.clip, route.query.at, player.placed.value.length] as const, ([clip, at], before) => {
+    if (typeof clip !== 'string' || (before && before[0] === clip && before[1] === at && before[2])) return
+    const ms = Math.round(Number(at ?? 0) * 1000)
+    if (player.placed.value.some(one => one.id === clip)) player.seekClip(clip, Number.isFinite(ms) ? ms : 0)
+  }, { immediate: true })
+
+  return { ...live, session, clips, steps, parts, plan, edits, captions, player, marks, tagging, keysOpen, spoken, reach, ready: Promise.all([plan]) }
+}
+
+export type SessionPage = ReturnType<typeof useSessionPage>

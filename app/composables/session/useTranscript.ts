@@ -1,0 +1,82 @@
+import { computed, nextTick, ref, shallowRef, watch, type Ref } from 'vue'
+import { defaultRangeExtractor, useVirtualizer } from '@tanstack/vue-virtual'
+import type { ChapterView } from '#shared/types/session'
+import { findRows, layTranscript, rowAt } from '#shared/utils/transcript/rows'
+import type { Player } from '../player/usePlayer'
+import type { Captions } from './useCaptions'
+
+/** A row's height before it has been measured, px. */
+const ROW_PX = 44
+
+interface Input { player: Player, captions: Captions, chapters: () => ChapterView[], list: Ref<HTMLElement | null>, pinned: () => number | null }
+
+/** The transcript as rows of which only those in sight exist, following the playback until the reader scrolls. */
+export function useTranscript({ player, captions, chapters, list, pinned }: Input) {
+  const rows = computed(() => layTranscript(player.placed.value, captions.cues.value, chapters()))
+  const current = computed(() => rowAt(rows.value, player.clipId.value, player.clipMs.value))
+  const following = ref(true)
+
+  const virtual = useVirtualizer(computed(() => ({
+    count: rows.value.length,
+    getScrollElement: () => list.value,
+    estimateSize: () => ROW_PX,
+    getItemKey: (index: number) => rows.value[index]?.cue.id ?? index,
+    overscan: 8,
+    // The row that a selection began in stays, however far one drags: without it the browser lets the selection go.
+    rangeExtractor: (range: Parameters<typeof defaultRangeExtractor>[0]) => {
+      const shown = defaultRangeExtractor(range)
+      const kept = pinned()
+      return kept === null || kept >= range.count || shown.includes(kept) ? shown : [...shown, kept].sort((a, b) => a - b)
+    },
+  })))
+  const items = computed(() => virtual.value.getVirtualItems())
+  const height = computed(() => virtual.value.getTotalSize())
+
+  let ours = 0
+  function reveal(index: number, align: 'center' | 'auto' = 'center'): void {
+    if (index < 0 || !list.value?.offsetParent) return
+    ours = performance.now()
+    virtual.value.scrollToIndex(index, { align })
+  }
+  watch(current, index => following.value && reveal(index), { flush: 'post' })
+  watch(() => rows.value.length, async () => {
+    await nextTick()
+    if (following.value) reveal(current.value)
+  })
+  function follow(): void {
+    following.value = true
+    reveal(current.value)
+  }
+  /** The reader's own hand on the list. */
+  function scrolledByHand(): void {
+    following.value = false
+  }
+  /** Rows that are measured move the list a little; only what a person does lets go of the playback. */
+  const isOurs = () => performance.now() - ours < 400
+
+  const wanted = ref('')
+  const found = computed(() => findRows(rows.value, wanted.value))
+  const foundAt = ref(-1)
+  watch(wanted, () => {
+    foundAt.value = found.value.length ? Math.max(0, found.value.findIndex(index => index >= current.value)) : -1
+    if (foundAt.value >= 0) goTo(found.value[foundAt.value]!)
+  })
+  function goTo(index: number): void {
+    following.value = false
+    reveal(index)
+  }
+  function findNext(by: 1 | -1): void {
+    if (!found.value.length) return
+    foundAt.value = (foundAt.value + by + found.value.length) % found.value.length
+    goTo(found.value[foundAt.value]!)
+  }
+
+  function seekTo(index: number): void {
+    const row = rows.value[index]
+    if (row) player.seekClip(row.cue.clipId, row.cue.startMs)
+  }
+
+  return { rows, current, following, virtual, items, height, wanted, found, foundAt, editing: shallowRef<string | null>(null), follow, scrolledByHand, isOurs, reveal, findNext, seekTo }
+}
+
+export type Transcript = ReturnType<typeof useTranscript>
