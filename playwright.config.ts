@@ -1,4 +1,5 @@
 import { defineConfig } from '@playwright/test'
+import { CHROMIUM } from './tests/support/chromium'
 
 /**
  * Debian's Chromium, never a downloaded one. One worker: the machine that CI has is small, and the tests share one
@@ -15,10 +16,7 @@ export default defineConfig({
   use: {
     viewport: { width: 1440, height: 900 },
     trace: 'retain-on-failure',
-    launchOptions: {
-      executablePath: '/usr/bin/chromium',
-      args: ['--headless=new', '--no-sandbox', '--disable-gpu', '--disable-quic', '--no-first-run', '--disable-background-networking', '--disable-component-update', '--disable-sync', '--autoplay-policy=no-user-gesture-required'],
-    },
+    launchOptions: CHROMIUM,
   },
   projects: [
     { name: 'browser', testIgnore: /faults\//, testMatch: /.*\.spec\.ts/ },
