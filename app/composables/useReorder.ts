@@ -27,18 +27,30 @@ export function useReorder<Row extends { id: string }>({ items, name, save }: Re
     values: rows,
     dragHandle: '[data-grip]',
     draggable: element => element.hasAttribute('data-row'),
-    draggingClass: 'opacity-40',
-    synthDraggingClass: 'opacity-80',
+    // The grip takes the focus when it is pressed, which would otherwise call the drag off.
+    handleNodeFocus: () => {},
+    handleNodeBlur: () => {},
+    dragPlaceholderClass: 'opacity-40',
+    synthDragPlaceholderClass: 'opacity-40',
     onDragend: ({ draggedNode }) => void keep(draggedNode.data.value as Row),
   }))
+  // The library marks rows as selected, which means nothing on a list item or table row.
+  if (import.meta.client) {
+    useEventListener(document, ['pointerup', 'pointercancel'], () => setTimeout(() => {
+      for (const row of list.value?.querySelectorAll('[aria-selected]') ?? []) row.removeAttribute('aria-selected')
+    }))
+  }
 
   const orderOf = (of: Row[]) => of.map(row => row.id).join()
+  let saving = false
   async function keep(moved: Row) {
-    if (orderOf(rows.value) === orderOf(items.value)) return
+    if (saving || orderOf(rows.value) === orderOf(items.value)) return
+    saving = true
     try {
       await save(rows.value, moved)
     }
     finally {
+      saving = false
       rows.value = [...items.value]
     }
   }
