@@ -60,7 +60,7 @@ export const OPERATION_LEXICON: Record<Exclude<Operation, 'none'>, OperationWord
     near: 'vacuum, denatured alcohol, rag, vinegar, acetone, excess, squeeze out, drips, bench',
   },
   'plan-talk': {
-    plain: 'plan, drawing, explain, table of offsets, instructions, deviation, measurements',
+    plain: 'plan, drawing, table of offsets, instructions, deviation, measurements',
     near: 'book, designer, page, dimension, decide, change, instead, reason, next time, sequence',
   },
 }

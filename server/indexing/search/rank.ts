@@ -35,6 +35,9 @@ const USUAL_WORDS = 70
 /** A tag set by a person is worth more than the word said once; one that the program proposes, less. */
 const INKED = 1.5
 const PENCILLED = 0.8
+/** A chapter tagged with all that was asked is an answer from its beginning; how near that counts, ms, and for how much. */
+const BEGINNING_MS = 10_000
+const BEGINNING = 1.25
 const TALK_OF_OTHER_TIMES = /\b(?:later|next time|next week|tomorrow|last time|last week|eventually|off camera|didn'?t film|going to have to)\b/i
 
 /** How telling a stem is: rarer counts more. Never below a tenth, so that nothing asked for is worth nothing. */
@@ -74,6 +77,7 @@ function score<Of extends Candidate>(question: Understanding, weights: number[],
   let total = 0
   let covered = 0
   let spokenWeight = 0
+  let taggedWhole = candidate.chapter !== null && question.concepts.length > 0
   question.concepts.forEach((concept, c) => {
     const weight = weights[c]!
     let heard = 0
@@ -84,6 +88,7 @@ function score<Of extends Candidate>(question: Understanding, weights: number[],
     })
     const spoken = heard * (K + 1) / (heard + K * (1 - B + B * length / USUAL_WORDS))
     const tagged = taggedWith(concept, candidate)
+    if (!tagged) taggedWhole = false
     total += weight * (spoken + tagged)
     covered += weight * Math.min(1, Math.max(heard, tagged))
     spokenWeight += weight * Math.min(1, heard)
@@ -96,6 +101,7 @@ function score<Of extends Candidate>(question: Understanding, weights: number[],
     if (answers(question.askedFor, around)) result *= 1.25
     if (TALK_OF_OTHER_TIMES.test(around)) result *= 0.7
   }
+  if (taggedWhole && candidate.startMs - candidate.chapter!.startMs < BEGINNING_MS) result *= BEGINNING
   // A stretch of a tagged chapter in which nothing asked for is said answers as a whole, from its start.
   const line = spokenWeight > 0 ? best : -1
   return { candidate, score: Math.round(result * 1e6) / 1e6, atMs: line === -1 ? candidate.startMs : candidate.starts[line]!, line }
@@ -138,7 +144,7 @@ function bestLine(perLine: number[]): number {
   let best = -1
   let most = 0
   for (let i = 0; i < perLine.length; i++) {
-    const pair = perLine[i]! * 1.05 + (perLine[i + 1] ?? 0) * 0.6
+    const pair = perLine[i]! + (perLine[i + 1] ?? 0) * 0.9
     if (perLine[i]! > 0 && pair > most + 1e-9) {
       most = pair
       best = i
