@@ -82,12 +82,12 @@ export function useStripActions(input: ActionsInput) {
     const before = edge === 'start' ? plank.chapter.startMs : plank.chapter.endMs
     const to = (point: Point, event: PointerEvent, isDone: boolean) => {
       edges.move(chapterId, edge, fromX(input.view(), point.x + grab) - clip.lineMs, { done: isDone, free: event.altKey })
+      showAtGuide(point)
     }
     let moved = false
     return {
       move(point, event) {
         moved ||= Math.abs(point.x - start.x) > 2
-        hover.value = { x: point.x + grab, y: point.y }
         if (moved) to(point, event, false)
       },
       end(point, event) {
@@ -104,9 +104,8 @@ export function useStripActions(input: ActionsInput) {
 
   function rangeDrag(clip: StripClip, fromLineMs: number): Drag {
     const to = (point: Point, event: PointerEvent) => {
-      hover.value = point
-      const lineMs = fromX(input.view(), point.x)
-      const range = edges.range(clip, fromLineMs, lineMs, event.altKey)
+      const range = edges.range(clip, fromLineMs, fromX(input.view(), point.x), event.altKey)
+      showAtGuide(point)
       if (range.endMs - range.startMs >= LEAST_RANGE_PX * input.view().msPerPx) input.selectRange({ clipId: clip.id, ...range })
     }
     return { move: to, end: done, cancel: done }
@@ -117,6 +116,12 @@ export function useStripActions(input: ActionsInput) {
     const strip = input.strip()
     const clip = selection && clipAt(strip.clips, (selection.inMs + selection.outMs) / 2, input.preferredLane())
     return clip ? rangeDrag(clip, toLine(strip.line, end === 'in' ? selection!.outMs : selection!.inMs)) : undefined
+  }
+
+  /** The picture shown is that of the place the edge has snapped to. */
+  function showAtGuide(point: Point) {
+    const guide = edges.guide.value
+    hover.value = { x: guide ? toX(input.view(), guide.lineMs) : point.x, y: point.y }
   }
 
   function done() {

@@ -9,8 +9,8 @@ export interface OverlayMarks { selection: LineRange | null, guide: Guide | null
 
 /** What changes from moment to moment: selection, the edge in hand, the pointer's hairline. */
 export function drawOverlay(pen: Pen, marks: OverlayMarks): void {
-  if (marks.hoverX !== null) drawHairline(pen, marks.hoverX)
-  if (marks.selection) drawSelection(pen, marks.selection)
+  if (marks.hoverX !== null && !marks.guide) drawHairline(pen, marks.hoverX)
+  if (marks.selection) drawSelection(pen, marks.selection, marks.guide === null)
   if (marks.guide) drawGuide(pen, marks.guide)
 }
 
@@ -26,7 +26,7 @@ function drawHairline({ ctx, theme, layout }: Pen, x: number): void {
 }
 
 /** The stretch between in and out: hatched like a section over the sheer, held by a clamp on either side. */
-function drawSelection(pen: Pen, { startMs, endMs }: LineRange): void {
+function drawSelection(pen: Pen, { startMs, endMs }: LineRange, withLength: boolean): void {
   const { ctx, theme, layout, view } = pen
   const left = toX(view, startMs)
   const right = toX(view, endMs)
@@ -56,7 +56,7 @@ function drawSelection(pen: Pen, { startMs, endMs }: LineRange): void {
   const font = figureFont(theme, 12.5, 600)
   const text = formatClock(endMs - startMs, { tenths: true })
   const width = textWidth(ctx, text, font) + 12
-  if (to - from > width + 28) chip(pen, (from + to) / 2, top + 10, text, font, 'lead')
+  if (withLength && to - from > width + 28) chip(pen, (from + to) / 2, top + 10, text, font, 'lead')
 }
 
 /** A clamp's frame: jaw above, jaw below, opening towards the selection. */
