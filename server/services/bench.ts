@@ -77,19 +77,20 @@ async function readPencilled(executor: Executor, buildId: string): Promise<Bench
   }
 }
 
+// Columns in a selected subquery are named by hand: Drizzle leaves the table out where a query has only one.
 async function readSteps(executor: Executor, buildId: string) {
   return executor.select({
     id: steps.id, number: steps.number, title: steps.title, stage: steps.stage, status: steps.status, plannedMinutes: steps.plannedMinutes,
-    filmed: sql<boolean>`exists (select 1 from ${chapters} where ${chapters.buildId} = ${steps.buildId} and ${chapters.stepId} = ${steps.id})`,
+    filmed: sql<boolean>`exists (select 1 from ${chapters} c where c.build_id = steps.build_id and c.step_id = steps.id)`,
   }).from(steps).where(and(eq(steps.buildId, buildId), isNull(steps.archivedAt))).orderBy(asc(steps.position))
 }
 
 async function readSessions(executor: Executor, buildId: string): Promise<BenchView['sessions']> {
   return executor.select({
     id: sessions.id, date: sessions.date, title: sessions.title, place: sessions.place,
-    clips: sql<number>`(select count(*)::int from ${clips} where ${clips.sessionId} = ${sessions.id})`,
-    durationMs: sql<number>`(select coalesce(sum(${clips.durationMs}), 0)::float8 from ${clips} where ${clips.sessionId} = ${sessions.id})`,
-    chapters: sql<number>`(select count(*)::int from ${chapters} where ${chapters.sessionId} = ${sessions.id})`,
+    clips: sql<number>`(select count(*)::int from ${clips} k where k.session_id = sessions.id)`,
+    durationMs: sql<number>`(select coalesce(sum(k.duration_ms), 0)::float8 from ${clips} k where k.session_id = sessions.id)`,
+    chapters: sql<number>`(select count(*)::int from ${chapters} c where c.session_id = sessions.id)`,
   }).from(sessions).where(eq(sessions.buildId, buildId)).orderBy(desc(sessions.date), desc(sessions.createdAt)).limit(LINES)
 }
 
