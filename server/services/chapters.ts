@@ -95,11 +95,10 @@ async function writeChapter(tx: Transaction, context: { sessionId: string, build
 /** Clips, steps and parts must be of this very session and build, and times within the clip. */
 async function checkReferences(tx: Transaction, sessionId: string, buildId: string, puts: ChapterPut[]): Promise<void> {
   const wanted = { clips: [...new Set(puts.map(put => put.clipId))], steps: [...new Set(puts.flatMap(put => put.stepId ?? []))], parts: [...new Set(puts.flatMap(put => put.partIds))] }
-  const [clipRows, stepRows, partRows] = await Promise.all([
-    wanted.clips.length ? tx.select({ id: clips.id, durationMs: clips.durationMs, name: clips.name }).from(clips).where(and(inArray(clips.id, wanted.clips), eq(clips.sessionId, sessionId))) : [],
-    wanted.steps.length ? tx.select({ id: steps.id }).from(steps).where(and(inArray(steps.id, wanted.steps), eq(steps.buildId, buildId))) : [],
-    wanted.parts.length ? tx.select({ id: parts.id }).from(parts).where(and(inArray(parts.id, wanted.parts), eq(parts.buildId, buildId))) : [],
-  ])
+  // One after the other: a transaction has one connection.
+  const clipRows = wanted.clips.length ? await tx.select({ id: clips.id, durationMs: clips.durationMs, name: clips.name }).from(clips).where(and(inArray(clips.id, wanted.clips), eq(clips.sessionId, sessionId))) : []
+  const stepRows = wanted.steps.length ? await tx.select({ id: steps.id }).from(steps).where(and(inArray(steps.id, wanted.steps), eq(steps.buildId, buildId))) : []
+  const partRows = wanted.parts.length ? await tx.select({ id: parts.id }).from(parts).where(and(inArray(parts.id, wanted.parts), eq(parts.buildId, buildId))) : []
   if (clipRows.length < wanted.clips.length) throw new DomainError('bad-input', 'That clip is not in this session. Nothing was changed.')
   if (stepRows.length < wanted.steps.length) throw new DomainError('bad-input', 'That step is not in this build\'s plan. Nothing was changed.')
   if (partRows.length < wanted.parts.length) throw new DomainError('bad-input', 'That part is not in this build. Nothing was changed.')

@@ -4,7 +4,7 @@ import type { SessionDetail, SessionSummary, TrackView } from '#shared/types/ses
 import { DomainError, notFound } from '#shared/utils/errors'
 import { addJob } from '../adapters/queue'
 import type { Database, Executor, Transaction } from '../database/client'
-import { captionTracks, clips, clipTasks, cues, sessions, sessionSteps, steps } from '../database/schema'
+import { captionTracks, clips, clipTasks, sessions, sessionSteps, steps } from '../database/schema'
 import type { BuildAccess } from './access'
 import { dropClip } from './clips'
 import { toClipView } from './clipView'
@@ -104,7 +104,8 @@ async function listTracks(executor: Executor, sessionId: string): Promise<TrackV
   return executor.select({
     id: captionTracks.id, clipId: captionTracks.clipId, name: captionTracks.name, language: captionTracks.language,
     embedded: sql<boolean>`${captionTracks.embeddedStream} is not null`,
-    cueCount: sql<number>`(select count(*)::int from ${cues} where ${cues.trackId} = ${captionTracks.id})`,
+    // Written out: in a select from one table Drizzle leaves the table's name off, and "id" would be the caption's.
+    cueCount: sql<number>`(select count(*)::int from cues where cues.track_id = caption_tracks.id)`,
     warnings: captionTracks.warnings, failure: captionTracks.failure, read: captionTracks.read,
   }).from(captionTracks).where(eq(captionTracks.sessionId, sessionId)).orderBy(asc(captionTracks.name), desc(captionTracks.createdAt))
 }
