@@ -4,6 +4,6 @@ import { searchSchema } from '#shared/schemas/search'
 export default apiHandler(async (event) => {
   const account = await whoAsks(event)
   const query = readQueryAs(event, searchSchema)
-  await limits().spend('search-address', getRequestIP(event) ?? 'unknown')
+  await limits().spend('search-address', addressOf(event))
   return search(db(), account?.id ?? null, query)
 })

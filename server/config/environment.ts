@@ -20,6 +20,8 @@ const environmentSchema = z.object({
   /** The address people type; mails, feeds and the Origin check use it. */
   PUBLIC_URL: filled('PUBLIC_URL').pipe(address('PUBLIC_URL', ['http:', 'https:'])),
   PORT: wholeNumber('PORT', 1, 65535).default(3000),
+  /** How many reverse proxies of ours stand before the site; each adds one address to X-Forwarded-For. */
+  TRUSTED_PROXIES: wholeNumber('TRUSTED_PROXIES', 0, 10).default(0),
   WORKER_CONCURRENCY: wholeNumber('WORKER_CONCURRENCY', 1, 64).default(2),
   NUXT_SESSION_PASSWORD: filled('NUXT_SESSION_PASSWORD', 32),
 })

@@ -3,7 +3,7 @@ import { signUpSchema } from '#shared/schemas/auth'
 
 export default apiHandler(async (event) => {
   const input = await readBodyAs(event, signUpSchema)
-  await limits().spend('sign-up-address', getRequestIP(event) ?? 'unknown')
+  await limits().spend('sign-up-address', addressOf(event))
   const user = await signUp(db(), passwords, input)
   await startSession(event, user)
   setResponseStatus(event, 201)
