@@ -18,6 +18,8 @@ export async function updateClip(database: Database, clipId: string, userId: str
       await tx.update(clips).set({ recordedAt: byHand ? new Date(changes.recordedAt!) : null, recordedAtSource: byHand ? 'hand' : null }).where(eq(clips.id, clipId))
     }
     if (changes.offsetMs !== undefined) {
+      // A place by hand is a place among the others: those must have theirs first.
+      await alignSession(tx, clip.sessionId)
       await tx.update(clips).set(changes.offsetMs === null ? { offsetByHand: false } : { offsetByHand: true, offsetMs: changes.offsetMs }).where(eq(clips.id, clipId))
     }
     if (changes.recordedAt !== undefined || changes.offsetMs !== undefined) await alignSession(tx, clip.sessionId)
