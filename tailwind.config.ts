@@ -1,4 +1,5 @@
 import type { Config } from 'tailwindcss'
+import plugin from 'tailwindcss/plugin'
 
 const tone = (name: string) => `rgb(var(--${name}) / <alpha-value>)`
 
@@ -24,11 +25,12 @@ export default {
       figures: ['"Sofia Sans Semi Condensed Variable"', '"Familjen Grotesk Variable"', 'sans-serif'],
     },
     extend: {
-      screens: { coarse: { raw: '(pointer: coarse)' } },
       borderRadius: { DEFAULT: '2px', plank: '1px 5px 1px 5px' },
       minHeight: { touch: '2.75rem' },
       minWidth: { touch: '2.75rem' },
       maxWidth: { sheet: '92rem', prose: '44rem' },
     },
   },
+  // A variant, not a screen: a screen that is no width would switch all `max-…:` variants off.
+  plugins: [plugin(({ addVariant }) => addVariant('coarse', '@media (pointer: coarse)'))],
 } satisfies Config
