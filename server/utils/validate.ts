@@ -10,10 +10,15 @@ export function validate<Schema extends z.ZodType>(schema: Schema, value: unknow
   throw new DomainError('bad-input', issues.length === 1 ? issues[0]!.message : `${issues.length} entries need mending: ${issues.map(i => i.message).join('; ')}`, { issues })
 }
 
+/** The largest thing a page sends as JSON is a plan; files go elsewhere. */
+const MAX_JSON_BYTES = 4 * 1024 * 1024
+
+/** A JSON body, bounded before it is held in memory, checked against a schema. */
 export async function readBodyAs<Schema extends z.ZodType>(event: H3Event, schema: Schema): Promise<z.output<Schema>> {
+  const bytes = await readBytes(event, MAX_JSON_BYTES, most => `That is more than ${most} MB, so nothing was changed.`)
   let body: unknown
   try {
-    body = await readBody(event)
+    body = bytes.length ? JSON.parse(bytes.toString('utf8')) : {}
   }
   catch {
     throw new DomainError('bad-input', 'The request could not be read. Nothing was changed.')
