@@ -26,6 +26,8 @@ export default defineNuxtConfig({
     // Workers, tests and root configs are checked too: they are in tsconfig.tools.json.
     tsConfig: { compilerOptions: { noUncheckedIndexedAccess: true } },
   },
+  // A small font inside the style sheet would be a data: address, which font-src does not allow.
+  vite: { build: { assetsInlineLimit: 0 } },
   nitro: {
     esbuild: { options: { target: 'node20' } },
     experimental: { asyncContext: false },
