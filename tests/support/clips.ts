@@ -155,9 +155,12 @@ async function make(kind: ClipKind): Promise<string> {
   return path
 }
 
-async function ffmpeg(args: string[]) {
+async function ffmpeg(args: string[]): Promise<void> {
   await execa('ffmpeg', ['-nostdin', '-v', 'error', '-y', ...args])
 }
+
+/** Good clips that bad ones are made from. */
+type Whole = 'good' | 'index-last' | 'silent' | 'matroska'
 
 /** Bytes that look random but are the same on every machine. */
 function scrambled(length: number): Buffer {
@@ -166,19 +169,19 @@ function scrambled(length: number): Buffer {
   return Buffer.concat(blocks).subarray(0, length)
 }
 
-async function shortened(kind: ClipKind, path: string, share: number) {
+async function shortened(kind: Whole, path: string, share: number): Promise<void> {
   await writeFile(path, await readFile(await makeClip(kind)))
   await truncate(path, Math.round((await stat(path)).size * share))
 }
 
-async function scramble(kind: ClipKind, path: string) {
+async function scramble(kind: Whole, path: string): Promise<void> {
   const data = await readFile(await makeClip(kind))
   const media = data.indexOf('mdat') + 4
   scrambled(data.length - media).copy(data, media)
   await writeFile(path, data)
 }
 
-async function manyTracks(kind: ClipKind, path: string, count: number) {
+async function manyTracks(kind: Whole, path: string, count: number): Promise<void> {
   const data = await readFile(await makeClip(kind))
   const moov = data.indexOf('moov') - 4
   const moovEnd = moov + data.readUInt32BE(moov)
@@ -198,7 +201,7 @@ async function manyTracks(kind: ClipKind, path: string, count: number) {
   }
 }
 
-async function absurdSize(kind: ClipKind, path: string) {
+async function absurdSize(kind: Whole, path: string): Promise<void> {
   const data = Buffer.from(await readFile(await makeClip(kind)))
   // VisualSampleEntry: 4 type, 6 reserved, 2 reference index, 16 predefined and reserved, then width and height.
   const entry = data.indexOf('avc1', data.indexOf('stsd'))

@@ -3,8 +3,6 @@ import { dirname } from 'node:path'
 import type { ProbeResult, ProxyReason } from '#shared/types/media'
 import { clipFault, faultOf } from './faults'
 import { fitInto } from './frames'
-import { indexFootage, keyframesSuffice } from './indexFootage'
-import type { IndexOptions, LocalFootage } from './indexFootage'
 import { probeClip } from './probe'
 import { inputLimits, localFile, runFfmpeg } from './run'
 
@@ -63,27 +61,6 @@ export async function makeProxy(path: string, probe: ProbeResult, outPath: strin
     await rm(outPath, { force: true })
     throw faultOf(error)
   }
-}
-
-/**
- * Makes proxy and index in the cheaper order. Where keyframes of the original are far apart but a new copy is encoded
- * anyway, the index is made from the copy, whose keyframes suffice: 0.7 of the work. Times agree, because both begin
- * at the first moment of the clip.
- */
-export async function indexAndProxy(
-  path: string, probe: ProbeResult, proxyPath: string, options: IndexOptions,
-): Promise<{ footage: LocalFootage, plan: ProxyPlan }> {
-  const plan = planProxy(probe)
-  const part = (from: number, to: number) => (share: number) => options.onProgress?.(from + share * (to - from))
-  const proxyFirst = plan === 'encode' && probe.video !== null && !keyframesSuffice(probe)
-  if (proxyFirst) {
-    await makeProxy(path, probe, proxyPath, { ...options, onProgress: part(0, 0.9) })
-    const proxy = await probeClip(proxyPath, options)
-    return { footage: await indexFootage(proxyPath, proxy, { ...options, onProgress: part(0.9, 1) }), plan }
-  }
-  const footage = await indexFootage(path, probe, { ...options, onProgress: part(0, plan === 'none' ? 1 : 0.2) })
-  if (plan !== 'none') await makeProxy(path, probe, proxyPath, { ...options, onProgress: part(0.2, 1) })
-  return { footage, plan }
 }
 
 function pictureArgs(probe: ProbeResult, plan: ProxyPlan): string[] {

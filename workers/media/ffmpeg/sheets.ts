@@ -9,6 +9,7 @@ export const TILE_HEIGHT = 90
 const COLUMNS = 16
 const ROWS = 15
 const PER_SHEET = COLUMNS * ROWS
+const SCRAP_MS = 200
 
 /** A picture every 5 s; short clips get a dozen, but none closer than a second. */
 export function tileInterval(durationMs: number): number {
@@ -32,7 +33,8 @@ export class SheetMaker {
   constructor(probe: ProbeResult, private readonly outDir: string, private readonly signal?: AbortSignal) {
     this.tile = fitInto(probe.video!, TILE_WIDTH, TILE_HEIGHT)
     this.intervalMs = tileInterval(probe.durationMs)
-    this.count = Math.max(1, Math.ceil(probe.durationMs / this.intervalMs))
+    // A last tile that would stand for a few frames only has no picture of its own.
+    this.count = Math.max(1, Math.ceil((probe.durationMs - SCRAP_MS) / this.intervalMs))
   }
 
   take(frame: Frame) {

@@ -52,10 +52,14 @@ export class SoundReducer {
     if (at < chunk.length) this.odd = chunk[at]!
   }
 
-  /** Peaks as bytes (255 full scale) and loudness in dB below full scale, 20 of each a second. */
-  finish(): { peaks: Uint8Array, loudnessDb: number[] } {
+  /**
+   * Peaks as bytes (255 full scale) and loudness in dB below full scale, 20 of each a second.
+   * @param atMost points to keep
+   */
+  finish(atMost = Infinity): { peaks: Uint8Array, loudnessDb: number[] } {
     if (this.inPoint > 0) this.close()
-    return { peaks: this.peaks.bytes(), loudnessDb: [...this.loudness.bytes()].map(byte => -byte / 2) }
+    const loudness = this.loudness.bytes().subarray(0, atMost)
+    return { peaks: this.peaks.bytes().subarray(0, atMost), loudnessDb: Array.from(loudness, byte => -byte / 2) }
   }
 
   private sample(value: number) {

@@ -1,13 +1,15 @@
 import { copyFile, mkdtemp, rm } from 'node:fs/promises'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
-import { describe, expect, it } from 'vitest'
+import { describe, expect, it, vi } from 'vitest'
 import type { ClipFailureCode, ProxyReason } from '#shared/types/media'
 import { ClipFault } from '../../../../../workers/media/ffmpeg/faults'
 import { planProxy } from '../../../../../workers/media/ffmpeg/makeProxy'
 import { extractSubtitles, probeClip } from '../../../../../workers/media/ffmpeg/probe'
 import { makeClip } from '../../../../support/clips'
 import type { ClipKind } from '../../../../support/clips'
+
+vi.setConfig({ testTimeout: 120_000 })
 
 describe('probeClip on clips that can be used', () => {
   it.each<[ClipKind, ProxyReason[], 'none' | 'remux' | 'encode']>([

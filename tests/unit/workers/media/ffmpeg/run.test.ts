@@ -1,10 +1,12 @@
 import { execa } from 'execa'
 import { readFile } from 'node:fs/promises'
-import { describe, expect, it } from 'vitest'
+import { describe, expect, it, vi } from 'vitest'
 import { localFile, pipeName, runFfmpeg, RunError, runFfprobe } from '../../../../../workers/media/ffmpeg/run'
 import { makeClip } from '../../../../support/clips'
 
 const endless = ['-re', '-f', 'lavfi', '-i', 'testsrc2=s=64x64:r=5', '-f', 'null', '-']
+
+vi.setConfig({ testTimeout: 120_000 })
 
 describe('runFfmpeg', () => {
   it('returns what is written to standard output and feeds extra pipes', async () => {
