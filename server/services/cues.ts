@@ -1,4 +1,4 @@
-import { and, asc, eq, sql } from 'drizzle-orm'
+import { asc, eq, sql } from 'drizzle-orm'
 import type { CueChanges } from '#shared/schemas/captions'
 import type { Cue } from '#shared/types/captions'
 import type { CueView } from '#shared/types/session'

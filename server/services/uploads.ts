@@ -172,4 +172,3 @@ async function requireUpload(database: Database, clipId: string): Promise<{ clip
 function gone(): DomainError {
   return new DomainError('conflict', 'This upload is not open any more: it was finished or cancelled on another page. Reload the session to see how it stands.')
 }
-

@@ -16,7 +16,7 @@ export interface EmbeddedCaptions { stream: number, language: string, trackId: s
 /** Takes the text tracks out of a clip as WebVTT and stores them. A track that cannot be taken out is left where it is. */
 export async function readEmbeddedCaptions({ storage }: WorkerContext, path: string, probe: ProbeResult, signal: AbortSignal): Promise<EmbeddedCaptions[]> {
   const found: EmbeddedCaptions[] = []
-  for (const { index, codec, language } of probe.subtitles.filter(track => TEXT_CODECS.has(track.codec)).slice(0, MOST_TRACKS)) {
+  for (const { index, language } of probe.subtitles.filter(track => TEXT_CODECS.has(track.codec)).slice(0, MOST_TRACKS)) {
     const bytes = await extract(path, index, signal)
     // Phones and action cameras write empty or data-like text tracks; a header alone says nothing.
     if (!bytes?.includes('-->')) continue
