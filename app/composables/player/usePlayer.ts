@@ -25,7 +25,11 @@ export function usePlayer(clips: () => ClipView[]) {
   const active = computed<Placed | null>(() => placed.value.find(clip => clip.id === chosenId.value) ?? placed.value.find(clip => clip.clip.src !== null) ?? placed.value[0] ?? null)
   const clipId = computed(() => active.value?.id ?? null)
   const atMs = computed(() => active.value ? active.value.startMs + clipMs.value : placement.value.startMs)
-  const cameras = computed(() => placed.value.filter(clip => clip.startMs <= atMs.value && atMs.value < clip.endMs))
+  /** Clips that run at this time; the same list while they are the same. */
+  const cameras = computed<Placed[]>((before) => {
+    const now = placed.value.filter(clip => clip.startMs <= atMs.value && atMs.value < clip.endMs)
+    return before?.length === now.length && now.every((clip, n) => clip === before[n]) ? before : now
+  })
   const next = computed(() => active.value ? placeAfter(placed.value, active.value) : null)
 
   const videos = useVideos({

@@ -21,7 +21,7 @@ interface Input {
   say: (words: string) => void
 }
 
-const GATHER_MS = 120
+const GATHER_MS = 60
 
 /**
  * The chapters of a session as the page shows them: what the server has, with edits that are on their way already
