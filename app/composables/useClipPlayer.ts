@@ -4,8 +4,8 @@ import type { WatchChapter } from '#shared/types/watch'
 const SPEEDS = [0.5, 1, 1.5, 2]
 
 /** One clip's player: where it stands, its chapters, and the shuttle keys. Times are integer ms of the clip. */
-export function useClipPlayer(video: Readonly<Ref<HTMLVideoElement | null>>, chapters: () => WatchChapter[]) {
-  const atMs = ref(0)
+export function useClipPlayer(video: Readonly<Ref<HTMLVideoElement | null>>, chapters: () => WatchChapter[], startMs: number) {
+  const atMs = ref(startMs)
   const speed = ref(1)
   /** Where playing stops by itself, for links to a stretch. */
   const stopMs = ref<number | null>(null)

@@ -1,6 +1,6 @@
 import { existsSync } from 'node:fs'
 import { performance } from 'node:perf_hooks'
-import { openDatabase } from '#server/database/client'
+import { type DatabaseHandle, openDatabase } from '#server/database/client'
 import { search } from '#server/services/search/search'
 import { searchSchema } from '#shared/schemas/search'
 import { startTestServer } from '../support/database'
@@ -17,39 +17,44 @@ export async function measureSearch(cues = 1_000_000) {
     const began = performance.now()
     const corpus = await fillCorpus(handle.pool, { cues })
     const loadSeconds = Math.round((performance.now() - began) / 1000)
-    const asked = questions(corpus)
-    const inDatabase = timeQueries(handle.pool)
-    const times: { kind: string, q: string, database: number, service: number, found: number }[] = []
-    for (const round of [0, 1, 2]) {
-      for (const one of asked) {
-        inDatabase.reset()
-        const start = performance.now()
-        const answer = await search(handle.database, one.as, searchSchema.parse({ q: one.q, build: one.build }))
-        // The first round fills the caches that a running site has anyway.
-        if (round) times.push({ kind: one.kind, q: one.q, database: inDatabase.ms(), service: performance.now() - start, found: answer.count })
-      }
-    }
-    const ilike: number[] = []
-    for (const one of asked.filter((_, i) => i % 4 === 0)) {
-      const start = performance.now()
-      await handle.pool.query(`select id, clip_id, start_ms from cues where ($1::uuid is null or build_id = $1) and text ilike all ($2::text[]) order by clip_id, start_ms limit 20`, [one.build ?? null, one.words.map(word => `%${word}%`)])
-      ilike.push(performance.now() - start)
-    }
-    const http = await overHttp(server.url, asked)
-    const kinds = [...new Set(times.map(time => time.kind))].map((kind) => {
-      const own = times.filter(time => time.kind === kind)
-      return { kind, asked: own.length, databaseP50: p(own.map(t => t.database), 50), databaseP95: p(own.map(t => t.database), 95), serviceP95: p(own.map(t => t.service), 95), found: Math.round(own.reduce((sum, t) => sum + t.found, 0) / own.length) }
-    })
-    const slowest = times.sort((a, b) => b.database - a.database).slice(0, 5)
-    return {
-      cues: corpus.cues, passages: corpus.passages, loadSeconds, kinds, slowest,
-      databaseP50: p(times.map(t => t.database), 50), databaseP95: p(times.map(t => t.database), 95), serviceP95: p(times.map(t => t.service), 95), http,
-      ilikeP50: p(ilike, 50), ilikeP95: p(ilike, 95), ratioP95: Number((p(times.map(t => t.database), 95) / p(ilike, 95)).toFixed(4)),
-    }
+    return { loadSeconds, ...await measureCorpus(handle, server.url, corpus) }
   }
   finally {
     await handle.close()
     await server.stop()
+  }
+}
+
+/** The questions on a filled database: how long its statements take, the whole search, and ILIKE. */
+export async function measureCorpus(handle: DatabaseHandle, url: string, corpus: Corpus): Promise<Record<string, unknown>> {
+  const asked = questions(corpus)
+  const inDatabase = timeQueries(handle.pool)
+  const times: { kind: string, q: string, database: number, service: number, found: number }[] = []
+  for (const round of [0, 1, 2]) {
+    for (const one of asked) {
+      inDatabase.reset()
+      const start = performance.now()
+      const answer = await search(handle.database, one.as, searchSchema.parse({ q: one.q, build: one.build }))
+      // The first round fills the caches that a running site has anyway.
+      if (round) times.push({ kind: one.kind, q: one.q, database: inDatabase.ms(), service: performance.now() - start, found: answer.count })
+    }
+  }
+  const ilike: number[] = []
+  for (const one of asked.filter((_, i) => i % 4 === 0)) {
+    const start = performance.now()
+    await handle.pool.query(`select id, clip_id, start_ms from cues where ($1::uuid is null or build_id = $1) and text ilike all ($2::text[]) order by clip_id, start_ms limit 20`, [one.build ?? null, one.words.map(word => `%${word}%`)])
+    ilike.push(performance.now() - start)
+  }
+  const http = await overHttp(url, asked)
+  const kinds = [...new Set(times.map(time => time.kind))].map((kind) => {
+    const own = times.filter(time => time.kind === kind)
+    return { kind, asked: own.length, databaseP50: p(own.map(t => t.database), 50), databaseP95: p(own.map(t => t.database), 95), serviceP95: p(own.map(t => t.service), 95), found: Math.round(own.reduce((sum, t) => sum + t.found, 0) / own.length) }
+  })
+  const slowest = times.sort((a, b) => b.database - a.database).slice(0, 5)
+  return {
+    cues: corpus.cues, passages: corpus.passages, kinds, slowest,
+    databaseP50: p(times.map(t => t.database), 50), databaseP95: p(times.map(t => t.database), 95), serviceP95: p(times.map(t => t.service), 95), http,
+    ilikeP50: p(ilike, 50), ilikeP95: p(ilike, 95), ratioP95: Number((p(times.map(t => t.database), 95) / p(ilike, 95)).toFixed(4)),
   }
 }
 

@@ -7,9 +7,9 @@ import type { Executor } from '../../database/client'
 import { builds, chapterParts, chapters, clips, memberships, passages, sessions } from '../../database/schema'
 
 /** Passages read for ranking, whatever the question: what keeps the worst question cheap. */
-const MOST_CANDIDATES = 240
+const MOST_CANDIDATES = 200
 /** A stricter reading that finds this many needs no looser one. */
-const ENOUGH = 40
+const ENOUGH = 20
 /** Passages of one concept beyond which it is too common to be searched for by itself. */
 const MOST_LOOSE = 4_000
 
@@ -64,8 +64,8 @@ export function readings(question: Understanding, frequencies: Frequencies, filt
     { text: join(rarestFirst.map(concept => concept.tagged ?? concept.said)), whole: false },
     ...rarestFirst.length === 1 && rarestFirst[0]!.tagged && rarestFirst[0]!.said ? [{ text: join([rarestFirst[0]!.tagged, rarestFirst[0]!.said]), whole: false }] : [],
     { text: join(rarestFirst.map(any)), whole: true },
-    // Four readings more at most: a long question is not worth a long search.
-    ...rarestFirst.slice(1).map((_, dropped) => ({ text: join(rarestFirst.slice(0, rarestFirst.length - 1 - dropped).map(any)), whole: true })).slice(-4),
+    // Three readings more at most: a long question is not worth a long search.
+    ...rarestFirst.slice(1).map((_, dropped) => ({ text: join(rarestFirst.slice(0, rarestFirst.length - 1 - dropped).map(any)), whole: true })).slice(-3),
     // Last, any of the telling words, while they are few enough to be looked through.
     ...rarestFirst.length > 2 ? [{ text: join([either(rarestFirst.filter(concept => concept.said && concept.count <= MOST_LOOSE).map(any))]), whole: true }] : [],
   ]
@@ -123,34 +123,45 @@ interface Row extends Record<string, unknown> {
 
 async function findWith(executor: Executor, reading: Reading, filters: Filters, seer: Seer, limit: number): Promise<FoundPassage[]> {
   const dated = filters.from || filters.to
-    ? sql`and exists (select 1 from ${sessions} d where d.id = p.session_id ${filters.from ? sql`and d.date >= ${filters.from}` : sql``} ${filters.to ? sql`and d.date <= ${filters.to}` : sql``})`
+    ? sql`and (p.session_id in (select d.id from ${sessions} d where true ${filters.from ? sql`and d.date >= ${filters.from}` : sql``} ${filters.to ? sql`and d.date <= ${filters.to}` : sql``})) is true`
     : sql``
+  // Passages are found and counted off by the text index alone; only those few are then joined and checked.
   const { rows } = await executor.execute<Row>(sql`
     select p.id, p.build_id, p.session_id, p.clip_id, p.start_ms, p.end_ms, p.starts, p.lines,
       c.id as chapter_id, c.start_ms as chapter_start, c.end_ms as chapter_end, c.step_id, c.operation, c.inking, c.confidence,
       case when c.id is not null then array(select part_id::text from ${chapterParts} where chapter_id = c.id) end as part_ids,
-      case when c.id is not null then (select string_agg(substr(tag, 3), ' ') from unnest(tsvector_to_array(p.lexemes)) tag where tag like 't:%') end as tags
-    from ${passages} p
+      case when c.id is not null then p.lexemes::text end as tags
+    from (select * from ${passages} p where p.lexemes @@ ${reading.text}::tsquery and ${maySee(seer)} ${dated} limit ${limit}) p
     left join ${chapters} c on c.id = p.chapter_id
-    where p.lexemes @@ ${reading.text}::tsquery and ${maySee(seer)} ${dated}
-    limit ${limit}`)
+    where ${stillMaySee(seer)}`)
   return rows.map(row => ({
     id: row.id, buildId: row.build_id, sessionId: row.session_id, clipId: row.clip_id,
     startMs: row.start_ms, endMs: row.end_ms, starts: row.starts, lines: row.lines,
     chapter: row.chapter_id ? { id: row.chapter_id, startMs: row.chapter_start, endMs: row.chapter_end, stepId: row.step_id, operation: row.operation, inking: row.inking, confidence: row.confidence, partIds: row.part_ids ?? [] } : null,
-    tagStems: new Set(row.tags?.split(' ')),
+    tagStems: new Set(Array.from(row.tags?.matchAll(/'t:([^']*)'/g) ?? [], match => match[1]!)),
   }))
 }
 
-/** Decided on chapters and memberships as they stand, not on what the index remembers of them. */
+/**
+ * Which passages are whose, by memberships as they stand. `is true` keeps the planner from going through
+ * passages build by build where it takes words for commoner than they are.
+ */
 function maySee(seer: Seer): SQL {
+  if ('inkedOnly' in seer) return sql`true`
+  const open = sql`select b.id from ${builds} b where b.visibility = 'public'`
+  if (!seer.userId) return sql`(p.build_id in (${open})) is true`
+  const mine = (roles: SQL) => sql`select m.build_id from ${memberships} m where m.user_id = ${seer.userId} ${roles}`
+  return sql`((p.build_id in (${mine(sql`and m.role in ('builder', 'crew')`)})) is true
+    or (p.lexemes @@ ${lexeme('i:1')}::tsquery and (p.build_id in (${open} union all ${mine(sql``)})) is true))`
+}
+
+/** What is published is decided on chapters and clips as they stand, not on what the index remembers of them. */
+function stillMaySee(seer: Seer): SQL {
   // Under an inked chapter, and still within it: a chapter may have been drawn in since.
   const published = sql`(c.inking = 'inked' and p.start_ms >= c.start_ms and p.start_ms < c.end_ms and exists (select 1 from ${clips} k where k.id = p.clip_id and k.state = 'ready'))`
   if ('inkedOnly' in seer) return seer.inkedOnly ? published : sql`true`
-  if (!seer.userId) return sql`${published} and exists (select 1 from ${builds} b where b.id = p.build_id and b.visibility = 'public')`
-  return sql`exists (
-    select 1 from ${builds} b left join ${memberships} m on m.build_id = b.id and m.user_id = ${seer.userId}
-    where b.id = p.build_id and (m.role in ('builder', 'crew') or (${published} and (m.role is not null or b.visibility = 'public'))))`
+  if (!seer.userId) return published
+  return sql`(${published} or exists (select 1 from ${memberships} m where m.build_id = p.build_id and m.user_id = ${seer.userId} and m.role in ('builder', 'crew')))`
 }
 
 /** How often each stem of the question is said: in one build, or everywhere. */
@@ -162,12 +173,18 @@ export async function readFrequencies(executor: Executor, stems: string[], build
   return { passages: of.get('') ?? 0, of }
 }
 
-/** Words said in the build (or anywhere) that look like the one typed. */
+/**
+ * Words said in the build (or anywhere) that look like the one typed. All begin with its letter, as `nearest`
+ * asks, which leaves few to be compared.
+ */
 export async function readLookalikes(executor: Executor, stem: string, buildId: string | undefined): Promise<{ word: string, count: number }[]> {
+  // A stem begins with a letter or digit: nothing in it is a pattern of LIKE.
+  const begins = `${stem[0]}%`
   const { rows } = await executor.execute<{ word: string, n: number }>(buildId
-    ? sql`select word, passages as n from search_words where build_id = ${buildId} and passages > 0 and length(stem) between ${stem.length - 3} and ${stem.length + 3}
-        and similarity(stem, ${stem}) > 0.15 order by similarity(stem, ${stem}) desc, passages desc limit 40`
-    : sql`select word, sum(passages)::int as n from search_words where stem % ${stem} and passages > 0 group by word order by max(similarity(stem, ${stem})) desc limit 40`)
+    ? sql`select word, passages as n from search_words where build_id = ${buildId} and stem like ${begins} and passages > 0
+        and length(stem) between ${stem.length - 3} and ${stem.length + 3} and similarity(stem, ${stem}) > 0.15
+        order by similarity(stem, ${stem}) desc, passages desc limit 40`
+    : sql`select word, sum(passages)::int as n from search_words where stem % ${stem} and stem like ${begins} and passages > 0 group by word order by max(similarity(stem, ${stem})) desc limit 40`)
   return rows.map(row => ({ word: row.word, count: row.n }))
 }
 
