@@ -1,8 +1,14 @@
-/** A calendar day for people, the same on server and page: '2026-09-05' → 'Sat 5 Sep 2026'. */
+const WEEKDAYS = ['Sun', 'Mon', 'Tue', 'Wed', 'Thu', 'Fri', 'Sat']
+const MONTHS = ['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep', 'Oct', 'Nov', 'Dec']
+
+/**
+ * A calendar day for people: '2026-09-05' → 'Sat 5 Sep 2026'. Spelt here, because Node and browsers differ in
+ * how they shorten September, and page and server must agree.
+ */
 export function formatDay(date: string): string {
   const day = new Date(`${date}T12:00:00Z`)
   if (Number.isNaN(day.getTime())) return date
-  return new Intl.DateTimeFormat('en-GB', { weekday: 'short', day: 'numeric', month: 'short', year: 'numeric', timeZone: 'UTC' }).format(day).replace(',', '')
+  return `${WEEKDAYS[day.getUTCDay()]} ${day.getUTCDate()} ${MONTHS[day.getUTCMonth()]} ${day.getUTCFullYear()}`
 }
 
 /** A length of footage for lists: '48 s', '12 min', '3 h 05 min'. */
