@@ -98,7 +98,7 @@ export async function start({ dev = false }: StartOptions = {}): Promise<void> {
       name: 'worker',
       command: process.execPath,
       args: ['--import', 'tsx', join(root, 'workers/media/main.ts')],
-      env: shared,
+      env: { WORKER_TEMP_DIR: join(dataDir, 'tmp'), ...shared },
       ready: async () => true,
     })
     if (!dev) buildSite()
