@@ -1,12 +1,15 @@
 import { computed, nextTick, ref, shallowRef, watch, type Ref } from 'vue'
 import { defaultRangeExtractor, useVirtualizer } from '@tanstack/vue-virtual'
 import type { ChapterView } from '#shared/types/session'
-import { findRows, layTranscript, rowAt } from '#shared/utils/transcript/rows'
+import { findRows, layTranscript, rowAt, type TranscriptRow } from '#shared/utils/transcript/rows'
 import type { Player } from '../player/usePlayer'
 import type { Captions } from './useCaptions'
 
-/** A row's height before it has been measured, px. */
-const ROW_PX = 44
+/** A row's height before it has been measured, px: near enough that the scroll bar hardly moves when it is. */
+function likelyHeight(row: TranscriptRow | undefined): number {
+  const lines = Math.ceil((row?.cue.text.length ?? 1) / 64)
+  return 12 + lines * 22 + (row?.opensChapter ? 26 : 0) + (row?.opensClip ? 25 : 0)
+}
 
 interface Input { player: Player, captions: Captions, chapters: () => ChapterView[], list: Ref<HTMLElement | null>, pinned: () => number | null }
 
@@ -15,11 +18,18 @@ export function useTranscript({ player, captions, chapters, list, pinned }: Inpu
   const rows = computed(() => layTranscript(player.placed.value, captions.cues.value, chapters()))
   const current = computed(() => rowAt(rows.value, player.clipId.value, player.clipMs.value))
   const following = ref(true)
+  const heights = new Map<string, number>()
 
   const virtual = useVirtualizer(computed(() => ({
     count: rows.value.length,
     getScrollElement: () => list.value,
-    estimateSize: () => ROW_PX,
+    estimateSize: (index: number) => likelyHeight(rows.value[index]),
+    // Only what the browser's own observer reports: asking each new row for its height would lay the page out once a row.
+    measureElement: (element: Element, entry: ResizeObserverEntry | undefined) => {
+      const index = Number((element as HTMLElement).dataset.index)
+      if (entry) heights.set(rows.value[index]?.cue.id ?? '', Math.round(entry.borderBoxSize[0]!.blockSize))
+      return heights.get(rows.value[index]?.cue.id ?? '') ?? likelyHeight(rows.value[index])
+    },
     getItemKey: (index: number) => rows.value[index]?.cue.id ?? index,
     overscan: 8,
     // The row that a selection began in stays, however far one drags: without it the browser lets the selection go.
@@ -32,10 +42,8 @@ export function useTranscript({ player, captions, chapters, list, pinned }: Inpu
   const items = computed(() => virtual.value.getVirtualItems())
   const height = computed(() => virtual.value.getTotalSize())
 
-  let ours = 0
   function reveal(index: number, align: 'center' | 'auto' = 'center'): void {
     if (index < 0 || !list.value?.offsetParent) return
-    ours = performance.now()
     virtual.value.scrollToIndex(index, { align })
   }
   watch(current, index => following.value && reveal(index), { flush: 'post' })
@@ -51,9 +59,6 @@ export function useTranscript({ player, captions, chapters, list, pinned }: Inpu
   function scrolledByHand(): void {
     following.value = false
   }
-  /** Rows that are measured move the list a little; only what a person does lets go of the playback. */
-  const isOurs = () => performance.now() - ours < 400
-
   const wanted = ref('')
   const found = computed(() => findRows(rows.value, wanted.value))
   const foundAt = ref(-1)
@@ -76,7 +81,7 @@ export function useTranscript({ player, captions, chapters, list, pinned }: Inpu
     if (row) player.seekClip(row.cue.clipId, row.cue.startMs)
   }
 
-  return { rows, current, following, virtual, items, height, wanted, found, foundAt, editing: shallowRef<string | null>(null), follow, scrolledByHand, isOurs, reveal, findNext, seekTo }
+  return { rows, current, following, virtual, items, height, wanted, found, foundAt, editing: shallowRef<string | null>(null), follow, scrolledByHand, reveal, findNext, seekTo }
 }
 
 export type Transcript = ReturnType<typeof useTranscript>
