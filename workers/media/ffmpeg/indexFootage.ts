@@ -37,7 +37,7 @@ const LONGEST_GAP_MS = 10_000
 /** Footage that may be decoded to find the exact frame of a cut, as a share of the clip. */
 const REFINE_SHARE = 0.08
 /** Short clips may always be looked at this far. */
-const REFINE_AT_LEAST_MS = 12_000
+const REFINE_AT_LEAST_MS = 6000
 
 /**
  * Makes everything that the page needs to draw a clip: poster, picture sheets, sound peaks, scene changes, silences.
