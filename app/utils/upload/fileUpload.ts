@@ -34,6 +34,8 @@ export class FileUpload {
     const stopper = this.stopper = new AbortController()
     this.set({ state: 'waiting', message: '' })
     try {
+      // An empty or far too large file need not wait in line to hear it.
+      planParts(this.file.size)
       await this.slots.files.run(stopper.signal, () => this.work(stopper.signal))
     }
     catch (error) {
@@ -53,7 +55,6 @@ export class FileUpload {
 
   private async work(signal: AbortSignal): Promise<void> {
     this.set({ state: 'checking', message: '' })
-    planParts(this.file.size)
     this.fingerprint ??= await this.outside.fingerprint(this.file)
     const begun = await this.begin(signal)
     this.set({ state: 'sending', clipId: begun.clipId, message: '' })
