@@ -1,4 +1,4 @@
-import { computed, ref, watch } from 'vue'
+import { computed, onMounted, ref, watch } from 'vue'
 import type { PlanView } from '#shared/types/plan'
 import type { SessionAction } from '~/utils/sessionKeys'
 import { usePlayer } from '../player/usePlayer'
@@ -59,11 +59,17 @@ export function useSessionPage(buildId: string, sessionId: string) {
 
   // A search result or a link leads to a moment: ?clip=…&at=seconds of that clip.
   const route = useRoute()
-  watch(() => [route.query.clip, route.query.at, player.placed.value.length] as const, ([clip, at], before) => {
-    if (typeof clip !== 'string' || (before && before[0] === clip && before[1] === at && before[2])) return
+  let gone = ''
+  function goToLink(): void {
+    const { clip, at } = route.query
+    const link = `${clip}@${at}`
+    if (typeof clip !== 'string' || link === gone || !player.placed.value.some(one => one.id === clip)) return
+    gone = link
     const ms = Math.round(Number(at ?? 0) * 1000)
-    if (player.placed.value.some(one => one.id === clip)) player.seekClip(clip, Number.isFinite(ms) ? ms : 0)
-  }, { immediate: true })
+    player.seekClip(clip, Number.isFinite(ms) ? ms : 0)
+  }
+  // After mounting: the server draws the page at its beginning, and the first drawing in the browser must be the same.
+  onMounted(() => watch(() => [route.query.clip, route.query.at, player.placed.value.length], goToLink, { immediate: true }))
 
   return { ...live, session, clips, steps, parts, plan, edits, captions, player, marks, tagging, keysOpen, spoken, reach, ready: Promise.all([plan]) }
 }

@@ -77,7 +77,7 @@ export function useTagging({ player, edits, marks, buildId, say }: Input) {
     // Its newest state: it may have been moved while the picker was open.
     const now = edits.chapters.value.find(one => one.id === chapter.id) ?? chapter
     const edit = retag(now, tag)
-    say(`Chapter is now ${edits.nameOf(edit.put[0]!)}`)
+    say(tag.note === undefined ? `Chapter is now ${edits.nameOf(edit.put[0]!)}` : 'Note kept')
     await edits.run({ ...edit, label: tag.note === undefined ? `Retag as ${edits.nameOf(edit.put[0]!)}` : 'Change note' })
   }
 
