@@ -64,4 +64,5 @@ export function useClipPlayer(video: Readonly<Ref<HTMLVideoElement | null>>, cha
   }
   return { atMs, speed, chapter, previous, next, seek, jump, tick, setSpeed, toggle, key, SPEEDS }
 }
-export type ClipPlayer = ReturnType<typeof useClipPlayer>
+/** What WatchPlayer lets its page do. */
+export interface PlayerHandle { seek: ReturnType<typeof useClipPlayer>['seek'], atMs: number }

@@ -14,12 +14,17 @@ import { trackCues } from './cues'
  * something of it is published, that is, an inked chapter in a build they may watch.
  */
 export async function requireMedia(executor: Executor, userId: string | null, clipId: string): Promise<Clip> {
+  return (await requireMediaOf(executor, userId, clipId)).clip
+}
+
+/** The same, and whether the asker works on the build or sees only what is published. */
+export async function requireMediaOf(executor: Executor, userId: string | null, clipId: string): Promise<{ clip: Clip, works: boolean }> {
   const { role } = await requireBuild(executor, userId, 'clip', clipId, 'watch')
   const works = role === 'builder' || role === 'crew'
   const published = sql`exists (select 1 from ${chapters} where ${chapters.clipId} = ${clips.id} and ${chapters.inking} = 'inked')`
   const [clip] = await executor.select().from(clips).where(and(eq(clips.id, clipId), works ? undefined : published))
   if (!clip) throw notFound('That clip')
-  return clip
+  return { clip, works }
 }
 
 /** Type by container: what the phone called it is not to be trusted with a browser. */
@@ -53,10 +58,12 @@ export async function peaksAddress(storage: Storage, clip: Clip): Promise<string
   return storage.presignGet(clip.footage.peaks.key, { contentType: 'application/octet-stream' })
 }
 
-/** A clip's captions as they stand now, for the player. */
-export async function clipCaptions(executor: Executor, clip: Clip, trackId: string): Promise<string> {
+/** A clip's captions as they stand now, for the player: all of them, or those that start within inked chapters. */
+export async function clipCaptions(executor: Executor, clip: Clip, trackId: string, options: { publishedOnly?: boolean } = {}): Promise<string> {
   const [track] = await executor.select({ id: captionTracks.id }).from(captionTracks).where(and(eq(captionTracks.id, trackId), eq(captionTracks.clipId, clip.id)))
   if (!track) throw notFound('Those captions')
   const { cues } = await trackCues(executor, trackId)
-  return writeVtt(cuesForStorage(cues))
+  if (!options.publishedOnly) return writeVtt(cuesForStorage(cues))
+  const inked = await executor.select({ startMs: chapters.startMs, endMs: chapters.endMs }).from(chapters).where(and(eq(chapters.clipId, clip.id), eq(chapters.inking, 'inked')))
+  return writeVtt(cuesForStorage(cues.filter(cue => inked.some(chapter => cue.startMs >= chapter.startMs && cue.startMs < chapter.endMs))))
 }

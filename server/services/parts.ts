@@ -6,6 +6,7 @@ import type { Database, Executor, Transaction } from '../database/client'
 import { type Part, parts } from '../database/schema'
 import { reorder } from '../indexing/plan/order'
 import { lockPlan, writeOrder } from './planOrder'
+import { refreshPassagesNaming } from './search/passages'
 
 export async function listParts(executor: Executor, buildId: string, options: { archived: boolean }): Promise<PartView[]> {
   const rows = await executor.select().from(parts)
@@ -35,6 +36,7 @@ export async function changePart(database: Database, buildId: string, partId: st
       .set({ ...fields, updatedAt: new Date(), ...(archived === undefined ? {} : { archivedAt: archived ? sql`coalesce(${parts.archivedAt}, now())` : null }) })
       .where(and(eq(parts.id, partId), eq(parts.buildId, buildId))).returning()
     if (!part) throw notFound('That part')
+    if (fields.name !== undefined || fields.aliases !== undefined) await refreshPassagesNaming(tx, { partId })
     return partView(part)
   })
 }

@@ -7,6 +7,7 @@ import { parts, type Step, stepParts, steps } from '../database/schema'
 import { reorder } from '../indexing/plan/order'
 import { listParts } from './parts'
 import { lockPlan, writeOrder } from './planOrder'
+import { refreshPassagesNaming } from './search/passages'
 
 /** The whole plan in order. Archived steps and parts only for those who work on the build. */
 export async function readPlanView(executor: Executor, buildId: string, options: { archived: boolean }): Promise<PlanView> {
@@ -66,6 +67,7 @@ export async function changeStep(database: Database, buildId: string, stepId: st
       .where(and(eq(steps.id, stepId), eq(steps.buildId, buildId))).returning()
     if (!step) throw notFound('That step')
     if (partIds) await linkParts(tx, step, partIds)
+    if (fields.title !== undefined) await refreshPassagesNaming(tx, { stepId })
     return readStep(tx, stepId)
   })
 }
