@@ -7,7 +7,7 @@ import { Resvg } from '@resvg/resvg-js'
 import sharp from 'sharp'
 import { scenes } from './scenes'
 import { fromFurtherOff, mixClip, wavFile } from './sound'
-import type { Samples } from './speech'
+import { RATE, type Samples } from './speech'
 import type { TimedClip } from './times'
 
 const FPS = 10
@@ -72,15 +72,16 @@ function startEncoder({ clip }: TimedClip, wav: string, out: string) {
   return spawn('ffmpeg', [
     '-nostdin', '-v', 'error', '-y',
     '-f', 'rawvideo', '-pix_fmt', 'rgba', '-s', size, '-r', String(FPS), '-i', 'pipe:0', '-i', wav,
-    '-c:v', 'libx264', '-preset', 'veryslow', '-tune', 'animation', '-crf', '39', '-pix_fmt', 'yuv420p',
+    '-c:v', 'libx264', '-preset', 'veryslow', '-tune', 'animation', '-crf', '41', '-pix_fmt', 'yuv420p',
     '-g', String(GOP), '-keyint_min', String(GOP), '-sc_threshold', '0',
-    '-af', 'highpass=f=70,lowpass=f=9000', '-c:a', 'aac', '-b:a', '32k', '-ar', '44100', '-ac', '1', out,
+    '-af', 'highpass=f=70,lowpass=f=9000', '-c:a', 'aac', '-b:a', '24k', '-ar', String(RATE), '-ac', '1', out,
   ], { stdio: ['pipe', 'inherit', 'inherit'] })
 }
 
 /** Adds what a phone writes: when it was recorded, which way up, and the index in front. */
 async function finish({ clip }: TimedClip, from: string, to: string): Promise<void> {
-  const turn = clip.camera.rotation === 90 ? ['-metadata:s:v:0', 'rotate=90'] : []
+  // ffmpeg 5 counts this anticlockwise; a player turns the picture 90° clockwise.
+  const turn = clip.camera.rotation === 90 ? ['-metadata:s:v:0', 'rotate=270'] : []
   const mux = spawn('ffmpeg', [
     '-nostdin', '-v', 'error', '-y', '-i', from, '-c', 'copy', '-map_metadata', '-1', '-fflags', '+bitexact',
     ...turn, '-metadata', `creation_time=${new Date(clip.recordedAt).toISOString()}`, '-movflags', '+faststart', to,
