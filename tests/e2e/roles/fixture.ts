@@ -1,4 +1,3 @@
-import { randomBytes } from 'node:crypto'
 import { Hash } from '@adonisjs/hash'
 import { Scrypt } from '@adonisjs/hash/drivers/scrypt'
 import { eq } from 'drizzle-orm'
@@ -6,6 +5,7 @@ import type { Database } from '#server/database/client'
 import { cues, parts, steps, uploads, type User } from '#server/database/schema'
 import type { FootageIndex, ProbeResult } from '#shared/types/media'
 import type { Visibility } from '#shared/types/trade'
+import { productStorage } from '../../support/productDatabase'
 import { makeBuild, makeChapter, makeClip, makeCues, makePart, makeSession, makeStep, makeUser } from '../../support/rows'
 
 export const PASSWORD = 'chine log and sheer'
@@ -40,6 +40,7 @@ export async function makeFixture(database: Database, people: Awaited<ReturnType
   await makeChapter(database, clip, { stepId: step.id })
   const [cue] = await makeCues(database, clip, ['this is the knee'])
   const track = cue!.trackId
+  const storage = productStorage()
   let span = 1000
 
   return {
@@ -56,7 +57,7 @@ export async function makeFixture(database: Database, people: Awaited<ReturnType
     partIds: async () => (await database.select({ id: parts.id }).from(parts).where(eq(parts.buildId, build.id)).orderBy(parts.position)).map(row => row.id),
     uploadingClip: async () => {
       const uploading = await makeClip(database, session, { state: 'uploading', contentHash: null, sizeBytes: 1000 })
-      await database.insert(uploads).values({ clipId: uploading.id, uploadId: randomBytes(16).toString('hex'), partSizeBytes: 8 * 1024 * 1024 })
+      await database.insert(uploads).values({ clipId: uploading.id, uploadId: await storage.beginUpload(uploading.objectKey, 'video/mp4'), partSizeBytes: 8 * 1024 * 1024 })
       return uploading
     },
   }
