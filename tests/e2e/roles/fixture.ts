@@ -42,12 +42,14 @@ export async function makeFixture(database: Database, people: Awaited<ReturnType
   const track = cue!.trackId
   const storage = productStorage()
   let span = 1000
+  let stepsMade = 0
 
   return {
     build, step, session, clip, track, spare: people.spare, password: PASSWORD,
     freeSpan: () => ({ startMs: 60_000 + (span += 1000), endMs: 60_000 + span + 900 }),
     anotherBuild: () => makeBuild(database, { visibility }, { builder, crew, follower }),
-    anotherStep: () => makeStep(database, build),
+    // Numbers that the site's own new steps will not take.
+    anotherStep: () => makeStep(database, build, { number: 1000 + ++stepsMade }),
     anotherPart: () => makePart(database, build),
     anotherSession: () => makeSession(database, build),
     anotherClip: () => makeClip(database, session),
