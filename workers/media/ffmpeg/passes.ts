@@ -35,6 +35,7 @@ export async function passKeyframes(
 ): Promise<number> {
   const video = input.probe.video!
   const frames = progressing(input, to.tile, to.onTile)
+  // Holds the first process back to the pace of the second: six hours of keyframes are gigabytes.
   const between = new PassThrough()
   // Either process failing ends the other.
   const stop = new AbortController()
@@ -45,7 +46,7 @@ export async function passKeyframes(
     '-map', '0:V:0', '-c', 'copy', '-bsf:v', `noise=drop='if(key\\,st(0\\,ld(0)+1)*0+mod(ld(0)-1\\,${every})\\,1)'`,
     '-avoid_negative_ts', 'disabled', '-f', 'matroska', 'pipe:1',
     ...input.probe.audio ? soundOutput(pipeName(0)) : [],
-  ], { ...options, onStdout: chunk => void between.write(chunk), extraPipes: [to.onSound] })
+  ], { ...options, onStdout: between, extraPipes: [to.onSound] })
   const decode = runFfmpeg([
     '-copyts', '-skip_loop_filter', 'all', ...decoderThreads(), '-noautorotate', ...inputLimits(['matroska']), '-i', 'pipe:0',
     '-fps_mode', 'passthrough', '-vf', `${shrinkAndTurn(video, to.tile.width, to.tile.height)},${toTimedRgb(pipeName(0))}`,

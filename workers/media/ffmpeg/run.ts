@@ -1,5 +1,6 @@
 import { availableParallelism } from 'node:os'
 import { isAbsolute } from 'node:path'
+import { Writable } from 'node:stream'
 import type { Readable } from 'node:stream'
 import { execa } from 'execa'
 
@@ -49,8 +50,8 @@ export interface RunOptions {
   timeoutMs?: number
   /** Limit of address space in bytes; 4 GiB when not given. */
   memoryBytes?: number
-  /** Where standard output goes; without it, it is returned. */
-  onStdout?: Sink
+  /** Where standard output goes; without it, it is returned. A stream holds the program back when it is full. */
+  onStdout?: Sink | Writable
   /** Most bytes that standard output may hold when it is returned; 32 MiB when not given. */
   maxStdoutBytes?: number
   /** Further pipes for ffmpeg to write to: the first is `pipe:4`, the second `pipe:5` … */
@@ -125,7 +126,8 @@ async function run(program: string, args: string[], options: RunOptions): Promis
   let stdoutBytes = 0
   let tooMuch = false
   const maxStdout = options.maxStdoutBytes ?? 32 * 1024 ** 2
-  child.stdio[1]!.on('data', options.onStdout ?? ((chunk: Buffer) => {
+  if (options.onStdout instanceof Writable) child.stdio[1]!.pipe(options.onStdout)
+  else child.stdio[1]!.on('data', options.onStdout ?? ((chunk: Buffer) => {
     stdoutBytes += chunk.length
     if (stdoutBytes <= maxStdout) stdout.push(chunk)
     else if (!tooMuch) {
