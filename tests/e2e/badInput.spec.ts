@@ -23,7 +23,7 @@ const askedElsewhere: string[] = []
 
 const FAILING: Partial<Record<ClipKind, RegExp>> = {
   'cut-off': /The clip is cut short.*The file is kept as uploaded\..*Copy it from the camera or phone again/,
-  'no-index': /The clip is cut short: the index that a camera writes at the end of a recording is missing/,
+  'no-index': /The clip is cut short: its end is missing, and with it the index that cameras write last\./,
   'text': /This is not a video or sound file: it holds plain text\. The file is kept as uploaded\./,
   'playlist-file': /a clip: it only points at files elsewhere, and those are never opened\. The file is kept as uploaded\. Upload the clips themselves/,
   'concat-list': /it only points at files elsewhere, and those are never opened/,
