@@ -1,10 +1,7 @@
 export default defineNuxtConfig({
-  compatibilityDate: '2026-11-01',
   modules: ['@pinia/nuxt', '@nuxtjs/tailwindcss', '@vueuse/nuxt', 'nuxt-auth-utils', 'nuxt-security', '@nuxt/eslint'],
-  devtools: { enabled: false },
-  telemetry: false,
-  css: ['@fontsource-variable/familjen-grotesk/wght.css', '@fontsource-variable/sofia-sans-semi-condensed/wght.css', '~/assets/main.css'],
   components: [{ path: '~/components', pathPrefix: false }],
+  devtools: { enabled: false },
   app: {
     head: {
       htmlAttrs: { lang: 'en' },
@@ -16,22 +13,26 @@ export default defineNuxtConfig({
       ],
     },
   },
+  css: ['@fontsource-variable/familjen-grotesk/wght.css', '@fontsource-variable/sofia-sans-semi-condensed/wght.css', '~/assets/main.css'],
   runtimeConfig: {
     session: { name: 'ribband', maxAge: 60 * 60 * 24 * 30, password: '', cookie: { sameSite: 'lax', httpOnly: true, secure: false } },
     public: { siteUrl: '' },
   },
   experimental: { typedPages: true, payloadExtraction: false },
+  compatibilityDate: '2026-11-01',
+  nitro: {
+    esbuild: { options: { target: 'node20' } },
+    experimental: { asyncContext: false },
+  },
+  // A small font inside the style sheet would be a data: address, which font-src does not allow.
+  vite: { build: { assetsInlineLimit: 0 } },
   typescript: {
     strict: true,
     // Workers, tests and root configs are checked too: they are in tsconfig.tools.json.
     tsConfig: { compilerOptions: { noUncheckedIndexedAccess: true } },
   },
-  // A small font inside the style sheet would be a data: address, which font-src does not allow.
-  vite: { build: { assetsInlineLimit: 0 } },
-  nitro: {
-    esbuild: { options: { target: 'node20' } },
-    experimental: { asyncContext: false },
-  },
+  telemetry: false,
+  eslint: { config: { stylistic: { commaDangle: 'always-multiline', braceStyle: 'stroustrup' } } },
   security: {
     strict: false,
     // Limits are ours, kept in PostgreSQL and shared by every site process.
@@ -66,6 +67,5 @@ export default defineNuxtConfig({
       },
     },
   },
-  eslint: { config: { stylistic: { commaDangle: 'always-multiline', braceStyle: 'stroustrup' } } },
   tailwindcss: { viewer: false, cssPath: false },
 })

@@ -81,8 +81,8 @@ export interface FootageIndex {
 }
 
 /** Every way a clip can fail, each with its own message for people. */
-export type ClipFailureCode =
-  | 'empty-file' | 'not-a-video' | 'truncated' | 'too-many-streams' | 'picture-too-large' | 'forbidden-format'
+export type ClipFailureCode
+  = 'empty-file' | 'not-a-video' | 'truncated' | 'too-many-streams' | 'picture-too-large' | 'forbidden-format'
   | 'no-duration' | 'timed-out' | 'out-of-space' | 'missing-object' | 'damaged' | 'internal'
 
 export interface ClipFailure {

@@ -1,6 +1,6 @@
 /** Kinds of failure that people meet. Each maps to one HTTP status in server/utils/httpErrors.ts. */
-export type ErrorCode =
-  | 'bad-input' // 400: the request cannot be read or breaks a rule
+export type ErrorCode
+  = 'bad-input' // 400: the request cannot be read or breaks a rule
   | 'signed-out' // 401: nobody is signed in
   | 'forbidden' // 403: may be seen, may not be changed by this role
   | 'not-found' // 404: is not there, or may not be seen

@@ -20,6 +20,9 @@ test.beforeAll(async () => {
 })
 test.afterAll(async () => {
   await Promise.all(Object.values(askers).map(asker => asker.dispose()))
+  // Nothing of this is left for the other tests' public pages.
+  await handle.pool.query(`delete from chapters where build_id in (select id from builds where address like 'build-%')`)
+  await handle.pool.query(`delete from builds where address like 'build-%'`)
   await handle.close()
 })
 
