@@ -26,7 +26,7 @@ export async function measureSearch(cues = 1_000_000) {
 }
 
 /** The questions on a filled database: how long its statements take, the whole search, and ILIKE. */
-export async function measureCorpus(handle: DatabaseHandle, url: string, corpus: Corpus): {
+export async function measureCorpus(handle: DatabaseHandle, url: string, corpus: Corpus) {
   const asked = questions(corpus)
   const inDatabase = timeQueries(handle.pool)
   const times: { kind: string, q: string, database: number, service: number, found: number }[] = []
