@@ -1,3 +1,4 @@
+import type { NuxtError } from '#app'
 import type { FieldIssue } from '#shared/utils/errors'
 
 /** A failed request in a form that pages can show: every message is written for people by the server. */
@@ -51,10 +52,10 @@ export function useApi() {
   }
 }
 
-/** Keyed page data from the API; errors are ApiProblems, and a failed load ends in the error page only when `fatal`. */
+/** Keyed page data from the API; errors are ApiProblems. With `fatal` a failed load ends in the error page and its status. */
 export function useApiData<T>(key: string | (() => string), path: () => string, options: { fatal?: boolean, lazy?: boolean, server?: boolean } = {}) {
   const api = useApi()
-  return useAsyncData<T>(key as string, async () => {
+  const asked = useAsyncData<T>(key as string, async () => {
     try {
       return await api<T>(path())
     }
@@ -63,4 +64,23 @@ export function useApiData<T>(key: string | (() => string), path: () => string, 
       throw createError({ statusCode: problem.status || 503, message: problem.message, fatal: options.fatal ?? false, data: { code: problem.code, message: problem.message } })
     }
   }, { lazy: options.lazy, server: options.server })
+  return options.fatal ? orErrorPage(asked) : asked
+}
+
+interface Answering { error: Ref<NuxtError | undefined> }
+
+/** Nuxt only keeps the error of asked data: the page would be drawn without it, and answer 200. */
+function orErrorPage<Asked extends Answering & PromiseLike<Answering>>(asked: Asked): Asked {
+  const nuxt = useNuxtApp()
+  // The same page for another address: nothing awaits it a second time.
+  watch(asked.error, (error) => {
+    if (error && import.meta.client) void nuxt.runWithContext(() => showError(error))
+  })
+  const whole = asked.then((found) => {
+    if (found.error.value) throw createError({ ...found.error.value, message: found.error.value.message, fatal: true })
+    return found
+  })
+  // What is asked for carries a `then` of its own, which would pass the error by.
+  const { then: _then, catch: _catch, finally: _finally, ...answer } = asked as unknown as Promise<unknown>
+  return Object.assign(whole, answer) as unknown as Asked
 }
