@@ -55,12 +55,15 @@ export function useApi() {
 /** Keyed page data from the API; errors are ApiProblems. With `fatal` a failed load ends in the error page and its status. */
 export function useApiData<T>(key: string | (() => string), path: () => string, options: { fatal?: boolean, lazy?: boolean, server?: boolean } = {}) {
   const api = useApi()
+  const event = useRequestEvent()
   const asked = useAsyncData<T>(key as string, async () => {
     try {
       return await api<T>(path())
     }
     catch (error) {
       const problem = asProblem(error)
+      // The page itself says what is wrong; its status says so too.
+      if (event) setResponseStatus(event, problem.status || 503)
       throw createError({ statusCode: problem.status || 503, message: problem.message, fatal: options.fatal ?? false, data: { code: problem.code, message: problem.message } })
     }
   }, { lazy: options.lazy, server: options.server })

@@ -68,6 +68,7 @@ export function useChapterEdits({ sessionId, me, steps, say }: Input) {
     finally {
       sending = false
     }
+    if (heardMeanwhile) void rereadSoon()
     void send()
   }
 
@@ -170,12 +171,16 @@ export function useChapterEdits({ sessionId, me, steps, say }: Input) {
   }
 
   const heard = new Set<string>()
+  /** Something was heard while an edit was on its way: read again when it has been answered. */
+  let heardMeanwhile = false
   async function reread(): Promise<void> {
     const at = settled
+    heardMeanwhile = false
     try {
       const fresh = await api<{ chapters: ChapterView[] }>(`/api/sessions/${sessionId}/chapters`)
       // An own edit came through meanwhile: this answer may be from before it.
-      if (at !== settled || sending) return void rereadSoon()
+      if (sending) return void (heardMeanwhile = true)
+      if (at !== settled) return void rereadSoon()
       const words = changeWords(base.value, fresh.chapters, heard, steps())
       heard.clear()
       data.value = fresh
