@@ -1,7 +1,7 @@
 import type { MomentHit } from '#shared/types/search'
 
 /** Clips kept open at once: the one that is watched and the likeliest next. */
-const OPEN = 4
+const OPEN = 6
 
 interface Slot { clipId: string, src: string, used: number }
 
