@@ -60,6 +60,7 @@ export function readings(question: Understanding, frequencies: Frequencies, filt
   const join = (terms: (string | null)[]) => [...always, ...terms.filter(term => term !== null)].join(' & ')
   const any = (concept: typeof rarestFirst[number]) => either([concept.said, concept.tagged])
   if (!rarestFirst.length) return always.length ? [{ text: join([]), whole: true }] : []
+  const telling = rarestFirst.filter(concept => concept.said && concept.count > 0 && concept.count <= MOST_LOOSE)
   const list: Reading[] = [
     { text: join(rarestFirst.map(concept => concept.tagged ?? concept.said)), whole: false },
     ...rarestFirst.length === 1 && rarestFirst[0]!.tagged && rarestFirst[0]!.said ? [{ text: join([rarestFirst[0]!.tagged, rarestFirst[0]!.said]), whole: false }] : [],
@@ -67,7 +68,7 @@ export function readings(question: Understanding, frequencies: Frequencies, filt
     // Three readings more at most: a long question is not worth a long search.
     ...rarestFirst.slice(1).map((_, dropped) => ({ text: join(rarestFirst.slice(0, rarestFirst.length - 1 - dropped).map(any)), whole: true })).slice(-3),
     // Last, any of the telling words, while they are few enough to be looked through.
-    ...rarestFirst.length > 2 ? [{ text: join([either(rarestFirst.filter(concept => concept.said && concept.count <= MOST_LOOSE).map(any))]), whole: true }] : [],
+    ...rarestFirst.length > 2 && telling.length ? [{ text: join([either(telling.map(any))]), whole: true }] : [],
   ]
   return list.filter((reading, i) => list.findIndex(other => other.text === reading.text) === i)
 }

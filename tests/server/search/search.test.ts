@@ -2,7 +2,9 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import type { Build, Clip, Part, Step, User } from '#server/database/schema'
 import { builds, chapters, clips, memberships } from '#server/database/schema'
 import { refreshPassages } from '#server/services/search/passages'
+import { readings } from '#server/services/search/finding'
 import { search } from '#server/services/search/search'
+import { understand } from '#server/indexing/search/understand'
 import { searchSchema } from '#shared/schemas/search'
 import { eq } from 'drizzle-orm'
 import type { SearchAnswer } from '#shared/types/search'
@@ -208,4 +210,26 @@ describe('many moments', () => {
     expect(rows[0].n).toBe(0)
     await db.delete(builds).where(eq(builds.id, small.id))
   })
+})
+
+describe('readings of a question', () => {
+  const plan = { steps: [], parts: [] }
+  const frequencies = { passages: 100_000, of: new Map([['glue', 30_000], ['epoxi', 20_000], ['screw', 40_000], ['drill', 30_000], ['sapel', 12]]) }
+  const texts = (q: string, filters = {}, seer: Parameters<typeof readings>[3] = { inkedOnly: false }) => readings(understand(q, plan), frequencies, filters, seer).map(reading => reading.text)
+
+  it('never end in the filters alone, which would find anything', () => {
+    for (const q of ['glue screw drill', 'glue sapele screw', 'sapele', 'nobodysaysthis', 'glue']) {
+      for (const text of texts(q, { buildId: 'b1' })) expect(text).toMatch(/^'b:b1' & ./)
+    }
+  })
+  it('ask for ink where only ink may be seen', () => {
+    for (const text of [...texts('glue', {}, { inkedOnly: true }), ...texts('glue', {}, { userId: null })]) expect(text).toContain('\'i:1\'')
+    for (const text of texts('glue', {}, { userId: 'somebody' })) expect(text).not.toContain('\'i:1\'')
+  })
+  it('are few, the strictest first and the rarest word last alone', () => {
+    const list = texts('sapele glue screw drill')
+    expect(list.length).toBeLessThanOrEqual(6)
+    expect(list).toContain('(\'sapel\' | \'t:sapel\')')
+  })
+  it('are none for nothing', () => expect(texts('')).toEqual([]))
 })
