@@ -33,7 +33,7 @@ export async function enqueueTask(tx: Transaction, clip: ClipPlace, task: Exclud
  * two tasks that end together leave the right state.
  */
 export async function settleClip(tx: Transaction, clipId: string): Promise<void> {
-  const [clip] = await tx.select({ id: clips.id, sessionId: clips.sessionId, state: clips.state, failure: clips.failure }).from(clips).where(eq(clips.id, clipId)).for('update')
+  const [clip] = await tx.select({ id: clips.id, sessionId: clips.sessionId, state: clips.state, failure: clips.failure }).from(clips).where(eq(clips.id, clipId)).for('no key update')
   if (!clip || clip.state === 'uploading') return
   const tasks = await tx.select({ task: clipTasks.task, state: clipTasks.state }).from(clipTasks).where(and(eq(clipTasks.clipId, clipId), inArray(clipTasks.task, [...NEEDED])))
   const stateOf = (task: ClipTask) => tasks.find(row => row.task === task)?.state
@@ -55,7 +55,7 @@ export async function failTask(tx: Transaction, clip: ClipPlace, task: ClipTask,
 /** Puts every failed task of a clip back in the queue. Answers how many there were. */
 export async function retryClip(database: Database, clipId: string, by: string): Promise<number> {
   return database.transaction(async (tx) => {
-    const [clip] = await tx.select().from(clips).where(eq(clips.id, clipId)).for('update')
+    const [clip] = await tx.select().from(clips).where(eq(clips.id, clipId)).for('no key update')
     if (!clip) return 0
     const failed = await tx.select({ task: clipTasks.task }).from(clipTasks).where(and(eq(clipTasks.clipId, clipId), eq(clipTasks.state, 'failed')))
     for (const { task } of failed) {

@@ -27,9 +27,17 @@ export async function updateClip(database: Database, clipId: string, userId: str
   })
 }
 
-/** Lays a session's clips on its clock again. The session's row lock makes two that end together take turns. */
+/**
+ * Makes those who lay a session's clips out take turns. To be taken before the lock of any of its clips: two who each
+ * hold a clip and want the other's would stop each other for good. Rows that merely refer to the session may still be added.
+ */
+export async function lockSession(tx: Transaction, sessionId: string): Promise<void> {
+  await tx.select({ id: sessions.id }).from(sessions).where(eq(sessions.id, sessionId)).for('no key update')
+}
+
+/** Lays a session's clips on its clock again. */
 export async function alignSession(tx: Transaction, sessionId: string): Promise<void> {
-  await tx.select({ id: sessions.id }).from(sessions).where(eq(sessions.id, sessionId)).for('update')
+  await lockSession(tx, sessionId)
   const rows = await tx.select().from(clips).where(eq(clips.sessionId, sessionId))
   const placed = alignClips(rows.map(clip => ({
     id: clip.id,
@@ -75,7 +83,9 @@ export async function dropClip(tx: Transaction, clip: Clip): Promise<void> {
 }
 
 async function lockClip(tx: Transaction, clipId: string): Promise<Clip> {
-  const [clip] = await tx.select().from(clips).where(eq(clips.id, clipId)).for('update')
+  const [place] = await tx.select({ sessionId: clips.sessionId }).from(clips).where(eq(clips.id, clipId))
+  if (place) await lockSession(tx, place.sessionId)
+  const [clip] = await tx.select().from(clips).where(eq(clips.id, clipId)).for('no key update')
   if (!clip) throw notFound('That clip')
   return clip
 }

@@ -2,6 +2,7 @@ import { eq } from 'drizzle-orm'
 import { z } from 'zod'
 import type { Transaction } from '#server/database/client'
 import { type Clip, clips } from '#server/database/schema'
+import { lockSession } from '#server/services/clips'
 import { countAttempt, failTask, setTask, settleClip } from '#server/services/clipTasks'
 import type { ClipTask } from '#shared/types/trade'
 import type { JobRun, WorkerContext } from './context'
@@ -36,7 +37,9 @@ export function clipJob(task: Exclude<ClipTask, 'read-captions'>, work: (given: 
       const outcome = await work({ context, clip, signal: run.signal, report: progress.report })
       await progress.settled()
       await database.transaction(async (tx) => {
-        const [standing] = await tx.select({ id: clips.id }).from(clips).where(eq(clips.id, clipId)).for('update')
+        // What a clip turns out to be may move the others of its session: session before clip, as everywhere.
+        await lockSession(tx, clip.sessionId)
+        const [standing] = await tx.select({ id: clips.id }).from(clips).where(eq(clips.id, clipId)).for('no key update')
         if (!standing) return
         await outcome(tx)
         await setTask(tx, clip, task, { state: 'done' })
