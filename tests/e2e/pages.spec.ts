@@ -57,7 +57,7 @@ const OWN: Visit[] = [
 ]
 const VISITS: Record<Reader, Visit[]> = {
   guest: [...PUBLIC, ['sign in', () => '/sign-in'], ['sign up', () => '/sign-up'], ['what needs an account', () => `/builds/${at.build}/sessions`, { lands: /\/sign-in\?to=/ }]],
-  follower: [['own builds', () => '/builds'], ['plan', () => `/builds/${at.build}/plan`], ['bench', () => `/builds/${at.build}`, { status: 403 }], ['sessions', () => `/builds/${at.build}/sessions`, { status: 403 }], ['a public build', () => `/watch/${at.address}`], ['a moment', () => at.moment]],
+  follower: [['own builds', () => '/builds'], ['plan', () => `/builds/${at.build}/plan`], ['bench', () => `/builds/${at.build}`], ['sessions', () => `/builds/${at.build}/sessions`, { status: 403 }], ['a public build', () => `/watch/${at.address}`], ['a moment', () => at.moment]],
   crew: OWN,
   builder: [...OWN, ['a new build', () => '/builds/new'], ['start', () => '/'], ['answers of every build', () => `/search?q=${q}`, { waitFor: '[data-moment]' }]],
 }
