@@ -70,18 +70,24 @@ export async function watchMoment(executor: Executor, userId: string | null, add
   return { ...head, clip, chapters: chapters.map(toPublic), lines: await publishedLines(executor, clipId), cover: coverOf(longest(chapters), siteUrl) }
 }
 
-/** Public builds and the numbers of their steps that are shown, for the sitemap. */
+/** A sitemap holds at most so many addresses (sitemaps.org protocol 0.9). */
+const SITEMAP_ADDRESSES = 50_000
+
+/** Pages of public builds for the sitemap, in one query: each build, its steps and clips that are shown. */
 export async function listedPages(executor: Executor): Promise<{ path: string, changed: Date }[]> {
-  const rows = await executor.select().from(builds).where(eq(builds.visibility, 'public')).orderBy(asc(builds.createdAt))
-  const pages: { path: string, changed: Date }[] = []
-  for (const build of rows) {
-    const chapters = await publishedChapters(executor, build.id)
-    const latest = (list: PublishedChapter[]) => new Date(Math.max(build.updatedAt.getTime(), ...list.map(chapter => chapter.changed.getTime())))
-    pages.push({ path: `/watch/${build.address}`, changed: latest(chapters) })
-    for (const number of new Set(chapters.flatMap(chapter => chapter.step?.number ?? []))) pages.push({ path: `/watch/${build.address}/steps/${number}`, changed: latest(chapters.filter(chapter => chapter.step?.number === number)) })
-    for (const clipId of new Set(chapters.map(chapter => chapter.clipId))) pages.push({ path: `/watch/${build.address}/moments/${clipId}`, changed: latest(chapters.filter(chapter => chapter.clipId === clipId)) })
-  }
-  return pages
+  const { rows } = await executor.execute<{ address: string, number: number | null, clipId: string | null, changed: string }>(sql`
+    select b.address, s.number, c.clip_id "clipId", greatest(max(b.updated_at), max(c.updated_at)) changed
+    from builds b
+    left join (chapters c join clips k on k.id = c.clip_id and k.state = 'ready') on c.build_id = b.id and c.inking = 'inked'
+    left join steps s on s.id = c.step_id
+    where b.visibility = 'public'
+    group by grouping sets ((b.id), (b.id, s.number), (b.id, c.clip_id))
+    having (grouping(s.number) = 1 and grouping(c.clip_id) = 1) or s.number is not null or c.clip_id is not null
+    order by b.created_at, b.id, grouping(s.number) + grouping(c.clip_id) desc, grouping(s.number), s.number, c.clip_id
+    limit ${SITEMAP_ADDRESSES}`)
+  return rows.map(({ address, number, clipId, changed }) => ({
+    path: `/watch/${address}${number !== null ? `/steps/${number}` : clipId ? `/moments/${clipId}` : ''}`, changed: new Date(changed),
+  }))
 }
 
 async function requireWatched(executor: Executor, userId: string | null, address: string, siteUrl: string, path: string): Promise<{ build: Build & { units: Units }, head: WatchHead }> {
