@@ -1,4 +1,3 @@
-import AxeBuilder from '@axe-core/playwright'
 import type { Page } from '@playwright/test'
 import type { SessionDetail } from '#shared/types/session'
 import { demoBuild } from '../../workers/demo/index'
@@ -63,16 +62,13 @@ const VISITS: Record<Reader, Visit[]> = {
 }
 const SIZES = [{ name: 'wide and bright', width: 1440, light: 'bright' }, { name: 'narrow and dim', width: 390, light: 'dim' }] as const
 
-/** One heading, a title, nothing wider than the page, and nothing that axe finds, in the other light neither. */
+/** One heading, a title, nothing wider than the page, and nothing that axe finds. Each page is seen in both lights. */
 async function expectSound(page: Page, light: 'bright' | 'dim'): Promise<void> {
   await expect(page.getByRole('heading', { level: 1 })).toHaveCount(1)
   expect(await page.title()).toMatch(/\S.*Ribband|Ribband.*\S/)
   expect(await page.evaluate(() => document.documentElement.dataset.light)).toBe(light)
   expect(await page.evaluate(() => document.documentElement.scrollWidth - document.documentElement.clientWidth)).toBeLessThanOrEqual(0)
   await expectAccessible(page)
-  await page.evaluate(other => document.documentElement.dataset.light = other, light === 'dim' ? 'bright' : 'dim')
-  const { violations } = await new AxeBuilder({ page }).withRules(['color-contrast']).analyze()
-  expect(violations.flatMap(({ nodes }) => nodes.map(node => node.target.join(' '))), 'contrast in the other light').toEqual([])
 }
 
 for (const size of SIZES) {
