@@ -4,6 +4,8 @@ interface Question {
   message: string
   /** The verb on the button: "Delete clip". */
   action: string
+  /** The other button; "Keep it" unless something else is meant. */
+  keep?: string
   danger?: boolean
   /** Must be typed before the button works, for what cannot be undone. */
   typed?: string

@@ -8,7 +8,11 @@ export function useWordSelection(list: Ref<HTMLElement | null>, rows: () => read
   const ends = shallowRef<[TextPoint, TextPoint] | null>(null)
   /** Row where the selection began. */
   const pinned = ref<number | null>(null)
-  const range = computed(() => ends.value && spokenRange(rows(), ...ends.value))
+  /** While the pointer is down nothing is offered: what appears under it would change what it selects. */
+  const dragging = ref(false)
+  const range = computed(() => dragging.value ? null : ends.value && spokenRange(rows(), ...ends.value))
+  useEventListener(list, 'pointerdown', () => dragging.value = true)
+  useEventListener(() => import.meta.client ? window : null, ['pointerup', 'pointercancel', 'dragend'], () => dragging.value = false)
 
   function pointOf(node: Node | null, offset: number): TextPoint | null {
     const element = node instanceof Element ? node : node?.parentElement

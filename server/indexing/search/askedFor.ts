@@ -1,7 +1,7 @@
 import type { AskedFor } from './types'
 
 const QUESTIONS: [RegExp, AskedFor][] = [
-  [/\bhow (?:long|many (?:minutes|hours|days)).*\b(?:cure|set|wait|leave|left|dry|take|took|clamped|pot life|open)\b|\bhow many (?:minutes|hours|days)\b|\bcure time\b|\bpot life\b|\bwhen\b/, 'time'],
+  [/\bhow (?:long|many (?:minutes|hours|days)).*\b(?:cure|set|wait|leave|left|dry|take|took|clamped|pot life|open|have|had|need|last|stay|go off|epoxy|glue|resin|varnish|paint)\b|\bhow many (?:minutes|hours|days)\b|\bcure time\b|\bpot life\b|\bwhen\b/, 'time'],
   [/\bwhat temperature|\bhow (?:hot|cold|warm)\b/, 'temperature'],
   [/\bwhat (?:angle|bevel)|\bhow (?:many degrees|steep)\b/, 'angle'],
   [/\bratio\b|\bhow (?:much|many).*\bto\b|\bmix(?:ed|ing)? (?:at|ratio)\b|\bslope\b/, 'ratio'],

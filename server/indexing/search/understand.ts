@@ -71,8 +71,11 @@ export function planStems(plan: SearchPlan): string[] {
   return [...plan.steps.map(step => step.title), ...plan.parts.flatMap(part => [part.name, ...part.aliases])].flatMap(text => stemsOf(text))
 }
 
+/** "How long", "how wide": the second word says what is asked for, not what was said. */
+const FRAME = /\b(how) (?:long|wide|thick|deep|high|tall|far|big|large|close|tight|often|steep|hot|cold|warm)\b/gi
+
 function contentWords(question: string): Token[] {
-  return tokenise(question.slice(0, 400)).filter(token => !isStopWord(token.word)).slice(0, MOST_WORDS)
+  return tokenise(question.slice(0, 400).replace(FRAME, '$1')).filter(token => !isStopWord(token.word)).slice(0, MOST_WORDS)
 }
 
 const saidByNumber = (question: string, number: number) => new RegExp(`\\bsteps?\\s*(?:no\\.?|number|#)?\\s*${number}\\b`, 'i').test(question)

@@ -98,3 +98,14 @@ describe('slips of the pen', () => {
     expect(question.parts.map(part => part.id).sort()).toEqual(['bow', 'stern'])
   })
 })
+
+describe('the frame of a question', () => {
+  it('says what is asked for and is not looked for itself', () => {
+    const question = read('how long did the epoxy have')
+    expect(question.rest).toEqual([])
+    expect(question.operations).toEqual(['glue'])
+    expect(question.askedFor).toBe('time')
+    expect(read('how wide is the gunwale').rest).toEqual([])
+    expect(read('the long plane').rest).toContain('long')
+  })
+})
