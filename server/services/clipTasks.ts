@@ -58,6 +58,7 @@ export async function retryClip(database: Database, clipId: string, by: string):
     const [clip] = await tx.select().from(clips).where(eq(clips.id, clipId)).for('no key update')
     if (!clip) return 0
     const failed = await tx.select({ task: clipTasks.task }).from(clipTasks).where(and(eq(clipTasks.clipId, clipId), eq(clipTasks.state, 'failed')))
+    if (!failed.length) return 0
     for (const { task } of failed) {
       if (task === 'read-captions') await readTracksAgain(tx, clip)
       else await enqueueTask(tx, clip, task)
