@@ -117,6 +117,6 @@ function coverOf(chapter: PublishedChapter | undefined, siteUrl: string): string
   return chapter?.hasPoster ? `${siteUrl}/media/clips/${chapter.clipId}/poster` : null
 }
 
-function toPublic({ hasPoster: _, changed: __, ...chapter }: PublishedChapter) {
+function toPublic({ hasPoster: _, ...chapter }: PublishedChapter) {
   return chapter
 }

@@ -5,7 +5,7 @@ import { captionTracks, chapterParts, chapters, clips, cues, parts, sessions, st
 import { isPlayable } from './clipView'
 import { pictureAt, pictureColumns } from './search/picture'
 
-export interface PublishedChapter extends WatchChapter { hasPoster: boolean, changed: Date }
+export interface PublishedChapter extends WatchChapter { hasPoster: boolean }
 
 /** Into a chapter, where its picture is taken: past the hand that starts the camera, ms. */
 const SETTLED_MS = 4_000
@@ -16,7 +16,7 @@ const published = and(eq(chapters.inking, 'inked'), eq(clips.state, 'ready'))
 /** A build's published chapters by plan order, then as they were filmed; of one clip, by time. */
 export async function publishedChapters(executor: Executor, buildId: string, clipId?: string): Promise<PublishedChapter[]> {
   const rows = await executor.select({
-    id: chapters.id, clipId: chapters.clipId, startMs: chapters.startMs, endMs: chapters.endMs, operation: chapters.operation, note: chapters.note, changed: chapters.updatedAt,
+    id: chapters.id, clipId: chapters.clipId, startMs: chapters.startMs, endMs: chapters.endMs, operation: chapters.operation, note: chapters.note,
     number: steps.number, title: steps.title, ...pictureColumns,
     parts: sql<string[]>`array(select ${parts.name} from ${chapterParts} join ${parts} on ${parts.id} = ${chapterParts.partId} where ${chapterParts.chapterId} = ${chapters.id} order by ${parts.position})`,
   }).from(chapters)
