@@ -1,6 +1,8 @@
 import { and, eq, inArray, sql } from 'drizzle-orm'
+import { alias } from 'drizzle-orm/pg-core'
 import type { ChapterChanges, ChapterPut } from '#shared/schemas/chapters'
 import type { ChapterView } from '#shared/types/session'
+import { forbiddenIn, forbiddenWords, type Hand } from '#shared/utils/chapters/rights'
 import { DomainError, notFound } from '#shared/utils/errors'
 import type { Database, Executor, Transaction } from '../database/client'
 import { chapterParts, chapters, clips, parts, sessions, steps, users } from '../database/schema'
@@ -10,16 +12,23 @@ import { refreshPassages } from './search/passages'
 /** What one set of changes came to. */
 export interface ChapterOutcome { chapters: ChapterView[], removed: string[] }
 
+/** Whoever changes chapters: an account, and what it is on the build. */
+export type ChapterHand = Hand & { id: string }
+
+const inkers = alias(users, 'inkers')
+
 /** Chapters of a session in clip and time order. */
 export async function listChapters(executor: Executor, where: { sessionId: string } | { ids: string[] }): Promise<ChapterView[]> {
   const rows = await executor
     .select({
       id: chapters.id, clipId: chapters.clipId, startMs: chapters.startMs, endMs: chapters.endMs, stepId: chapters.stepId, operation: chapters.operation,
       partIds: sql<string[]>`coalesce((select array_agg(${chapterParts.partId} order by ${chapterParts.partId}) from ${chapterParts} where ${chapterParts.chapterId} = ${chapters.id}), '{}')`,
-      inking: chapters.inking, confidence: chapters.confidence, evidence: chapters.evidence, note: chapters.note, version: chapters.version, updatedBy: users.name,
+      inking: chapters.inking, confidence: chapters.confidence, evidence: chapters.evidence, note: chapters.note, version: chapters.version,
+      inkedBy: { id: inkers.id, name: inkers.name }, updatedBy: users.name,
     })
     .from(chapters)
     .leftJoin(users, eq(users.id, chapters.updatedBy))
+    .leftJoin(inkers, eq(inkers.id, chapters.inkedBy))
     .where('sessionId' in where ? eq(chapters.sessionId, where.sessionId) : inArray(chapters.id, where.ids))
     .orderBy(chapters.clipId, chapters.startMs)
   return rows
@@ -27,14 +36,15 @@ export async function listChapters(executor: Executor, where: { sessionId: strin
 
 /**
  * Applies everything that one action changes, whole or not at all. Nobody's work is overwritten unseen:
- * each change names the version it was made from.
+ * each change names the version it was made from. Crew change no chapter that another person has inked.
  *
  * @throws DomainError `conflict` with `data.reason`: `changed` (somebody was quicker; `current` holds the chapters
  *   as they now are, `gone` the ids that are no more) or `overlap` (`with` holds the chapters in the way).
+ *   `forbidden` when the hand may not change one of the chapters.
  */
-export async function changeChapters(database: Database, sessionId: string, userId: string, changes: ChapterChanges): Promise<ChapterOutcome> {
+export async function changeChapters(database: Database, sessionId: string, hand: ChapterHand, changes: ChapterChanges): Promise<ChapterOutcome> {
   try {
-    return await database.transaction(tx => applyChanges(tx, sessionId, userId, changes))
+    return await database.transaction(tx => applyChanges(tx, sessionId, hand, changes))
   }
   catch (error) {
     if (isOverlap(error)) throw await overlapConflict(database, changes.put)
@@ -42,10 +52,11 @@ export async function changeChapters(database: Database, sessionId: string, user
   }
 }
 
-async function applyChanges(tx: Transaction, sessionId: string, userId: string, changes: ChapterChanges): Promise<ChapterOutcome> {
+async function applyChanges(tx: Transaction, sessionId: string, hand: ChapterHand, changes: ChapterChanges): Promise<ChapterOutcome> {
   const [session] = await tx.select({ buildId: sessions.buildId }).from(sessions).where(eq(sessions.id, sessionId))
   if (!session) throw notFound('That session')
   await checkReferences(tx, sessionId, session.buildId, changes.put)
+  if (hand.role !== 'builder') await checkRights(tx, sessionId, hand, changes)
   // Neighbours exchange their edge in one go: whether they overlap is asked at the end.
   await tx.execute(sql`set constraints chapters_never_overlap deferred`)
 
@@ -57,7 +68,7 @@ async function applyChanges(tx: Transaction, sessionId: string, userId: string, 
     else stale.push(id)
   }
   for (const put of changes.put) {
-    const clipsTouched = await writeChapter(tx, { sessionId, buildId: session.buildId, userId }, put)
+    const clipsTouched = await writeChapter(tx, { sessionId, buildId: session.buildId, userId: hand.id }, put)
     if (!clipsTouched) stale.push(put.id)
     for (const clip of clipsTouched ?? []) touched.add(clip)
   }
@@ -68,7 +79,7 @@ async function applyChanges(tx: Transaction, sessionId: string, userId: string, 
   await tx.execute(sql`set constraints chapters_never_overlap immediate`)
 
   for (const clipId of touched) await refreshPassages(tx, clipId)
-  for (const one of [...changes.put, ...changes.remove]) await announce(tx, { sessionId, kind: 'chapter', id: one.id, by: userId })
+  for (const one of [...changes.put, ...changes.remove]) await announce(tx, { sessionId, kind: 'chapter', id: one.id, by: hand.id })
   return { chapters: changes.put.length ? await listChapters(tx, { ids: changes.put.map(put => put.id) }) : [], removed: changes.remove.map(one => one.id) }
 }
 
@@ -78,18 +89,29 @@ async function writeChapter(tx: Transaction, context: { sessionId: string, build
   const values = { ...fields, confidence: put.inking === 'inked' ? null : put.confidence, updatedBy: context.userId }
   let before: string | undefined
   if (version === null) {
-    const [row] = await tx.insert(chapters).values({ id, ...values, sessionId: context.sessionId, buildId: context.buildId, createdBy: context.userId }).onConflictDoNothing({ target: chapters.id }).returning({ id: chapters.id })
+    const [row] = await tx.insert(chapters).values({ id, ...values, sessionId: context.sessionId, buildId: context.buildId, inkedBy: put.inking === 'inked' ? context.userId : null, createdBy: context.userId }).onConflictDoNothing({ target: chapters.id }).returning({ id: chapters.id })
     if (!row) return null
   }
   else {
-    const [old] = await tx.select({ clipId: chapters.clipId }).from(chapters).where(and(eq(chapters.id, id), eq(chapters.sessionId, context.sessionId), eq(chapters.version, version))).for('update')
+    const [old] = await tx.select({ clipId: chapters.clipId, inking: chapters.inking, inkedBy: chapters.inkedBy }).from(chapters).where(and(eq(chapters.id, id), eq(chapters.sessionId, context.sessionId), eq(chapters.version, version))).for('update')
     if (!old) return null
     before = old.clipId
-    await tx.update(chapters).set({ ...values, version: version + 1 }).where(eq(chapters.id, id))
+    // Ink stays the first hand's: the builder who trims a chapter of the crew's does not take it from them.
+    const inkedBy = put.inking === 'pencilled' ? null : old.inking === 'inked' ? old.inkedBy : context.userId
+    await tx.update(chapters).set({ ...values, inkedBy, version: version + 1 }).where(eq(chapters.id, id))
     await tx.delete(chapterParts).where(eq(chapterParts.chapterId, id))
   }
   if (partIds.length) await tx.insert(chapterParts).values([...new Set(partIds)].map(partId => ({ chapterId: id, partId })))
   return [put.clipId, ...(before ? [before] : [])]
+}
+
+/** Locks what is to be changed, so that nobody inks it between this look and the change. */
+async function checkRights(tx: Transaction, sessionId: string, hand: ChapterHand, changes: ChapterChanges): Promise<void> {
+  const ids = [...changes.put, ...changes.remove].map(one => one.id)
+  await tx.select({ id: chapters.id }).from(chapters).where(and(inArray(chapters.id, ids), eq(chapters.sessionId, sessionId))).orderBy(chapters.id).for('update')
+  const stood = await listChapters(tx, { ids })
+  const [other] = forbiddenIn(changes, stood, hand)
+  if (other) throw new DomainError('forbidden', `${forbiddenWords(other)} Nothing was changed.`, { chapterId: other.id })
 }
 
 /** Clips, steps and parts must be of this very session and build, and times within the clip. */

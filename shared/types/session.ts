@@ -79,6 +79,8 @@ export interface ChapterView {
   evidence: { atMs: number, words: string }[]
   note: string
   version: number
+  /** Who inked it; null while it is pencilled. */
+  inkedBy: { id: string, name: string } | null
   updatedBy: string | null
 }
 

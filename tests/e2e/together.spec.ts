@@ -5,7 +5,7 @@ import type { Operation } from '#shared/types/trade'
 import { expect, expectAccessible, hydrated, test } from '../support/browser'
 import { addMember, freshClip, newBuild, newPerson, newSession, newStep, type OwnBuild, type Person, uploadReadyClip } from '../support/people'
 
-/** Two people at one session: a builder and crew, each in a browser of their own. */
+/** Two people at one session, both builders of the boat, each in a browser of their own. */
 let nell: Person
 let tam: Person
 let build: OwnBuild
@@ -14,7 +14,7 @@ let clipBytes: () => Promise<Buffer>
 test.beforeAll(async () => {
   [nell, tam] = await Promise.all([newPerson('Nell Garboard'), newPerson('Tam Sheerline')])
   build = await newBuild(nell)
-  await addMember(build, tam, 'crew')
+  await addMember(build, tam, 'builder')
   await newStep(build, 'Fit the bow transom')
   await newStep(build, 'Bend the sheer clamp')
   clipBytes = () => freshClip('numbered')

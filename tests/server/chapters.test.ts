@@ -5,22 +5,23 @@ import { chapters } from '#server/database/schema'
 import { changeChapters, listChapters } from '#server/services/chapters'
 import { createLiveListener, type LiveEvent } from '#server/services/live'
 import { chapterChangesSchema } from '#shared/schemas/chapters'
-import { type Edit, join, mark, moveEdge, remove, retag, split } from '#shared/utils/chapters/edits'
+import { asPut, type Edit, join, mark, moveEdge, remove, retag, split } from '#shared/utils/chapters/edits'
 import { asChanges, type Done, doneWith, restamp, takeBack, touchedBy } from '#shared/utils/chapters/history'
 import { cuttingBack, overTheirs } from '#shared/utils/chapters/conflicts'
 import type { ChapterView } from '#shared/types/session'
 import { type TestDatabase, testDatabase } from '../support/database'
-import { makeBuild, makeChapter, makeClip, makePart, makeSession, makeStep, makeUser } from '../support/rows'
+import { makeBuild, makeChapter, makeClip, makeMember, makePart, makeSession, makeStep, makeUser } from '../support/rows'
 
 let database: TestDatabase
-let builder: User, crew: User
+let builder: User, ivo: User, helper: User
 let build: Build, session: Session, clip: Clip, second: Clip, step: Step, other: Step, part: Part
 
 beforeAll(async () => {
   database = await testDatabase()
   const db = database.database
-  ;[builder, crew] = [await makeUser(db, { name: 'Maud' }), await makeUser(db, { name: 'Ivo' })]
-  build = await makeBuild(db, {}, { builder, crew })
+  ;[builder, ivo, helper] = [await makeUser(db, { name: 'Maud' }), await makeUser(db, { name: 'Ivo' }), await makeUser(db, { name: 'Wren' })]
+  build = await makeBuild(db, {}, { builder, crew: helper })
+  await makeMember(db, build, ivo, 'builder')
   session = await makeSession(db, build)
   clip = await makeClip(db, session)
   second = await makeClip(db, session)
@@ -36,7 +37,7 @@ beforeEach(async () => {
 const newId = () => crypto.randomUUID()
 const list = () => listChapters(database.database, { sessionId: session.id })
 /** As the page's request travels: through the schema, then the service. */
-const send = (edit: Edit, user = builder) => changeChapters(database.database, session.id, user.id, chapterChangesSchema.parse(asChanges(edit)))
+const send = (edit: Edit, user = builder) => changeChapters(database.database, session.id, { id: user.id, role: user === helper ? 'crew' : 'builder' }, chapterChangesSchema.parse(asChanges(edit)))
 const tag = () => ({ stepId: step.id, operation: 'glue' as const, partIds: [part.id] })
 const spans = (rows: ChapterView[]) => rows.filter(row => row.clipId === clip.id).map(row => [row.startMs, row.endMs])
 async function marked(startMs: number, endMs: number, user = builder): Promise<ChapterView> {
@@ -135,7 +136,7 @@ describe('things of another build', () => {
 describe('two people', () => {
   it('do not overwrite one another: the slower is told what now stands', async () => {
     const seen = await marked(0, 5000)
-    await send(retag(seen, { operation: 'fasten' }), crew)
+    await send(retag(seen, { operation: 'fasten' }), ivo)
     const mine = retag(seen, { operation: 'paint' })
     const conflict = await send(mine).then(() => null, error => error)
     expect(conflict).toMatchObject({ code: 'conflict', data: { reason: 'changed', gone: [], current: [{ id: seen.id, operation: 'fasten', version: 2, updatedBy: 'Ivo' }] } })
@@ -147,7 +148,7 @@ describe('two people', () => {
 
   it('learn that a chapter is gone, and may mark it again', async () => {
     const seen = await marked(0, 5000)
-    await send(remove(seen), crew)
+    await send(remove(seen), ivo)
     const mine = retag(seen, { operation: 'paint' })
     const conflict = await send(mine).then(() => null, error => error)
     expect(conflict.data).toMatchObject({ reason: 'changed', current: [], gone: [seen.id] })
@@ -157,7 +158,7 @@ describe('two people', () => {
 
   it('who mark the same stretch unseen: one is told what is in the way, and may cut it back', async () => {
     const mine = mark(await list(), clip.id, 2000, 6000, tag(), newId)
-    await marked(4000, 9000, crew)
+    await marked(4000, 9000, ivo)
     const conflict = await send(mine).then(() => null, error => error)
     expect(conflict).toMatchObject({ code: 'conflict', data: { reason: 'overlap', with: [{ startMs: 4000, endMs: 9000, updatedBy: 'Ivo' }] } })
     expect(spans(await list())).toEqual([[4000, 9000]])
@@ -170,21 +171,21 @@ describe('two people', () => {
     await marked(5000, 9000)
     const [first, next] = await list()
     const joined = join([first!, next!], first!)!
-    await send(retag(next!, { note: 'Ivo was here' }), crew)
+    await send(retag(next!, { note: 'Ivo was here' }), ivo)
     await expect(send(joined)).rejects.toMatchObject({ data: { reason: 'changed' } })
     expect(spans(await list())).toEqual([[0, 5000], [5000, 9000]])
   })
 
   it.each([1, 2, 3])('at the very same moment: one of two wins and never both (%i)', async () => {
     const seen = await marked(0, 5000)
-    const results = await Promise.allSettled([send(retag(seen, { operation: 'paint' })), send(retag(seen, { operation: 'fasten' }), crew)])
+    const results = await Promise.allSettled([send(retag(seen, { operation: 'paint' })), send(retag(seen, { operation: 'fasten' }), ivo)])
     expect(results.filter(result => result.status === 'fulfilled')).toHaveLength(1)
     const [row] = await list()
     expect(row).toMatchObject({ version: 2, operation: results[0]!.status === 'fulfilled' ? 'paint' : 'fasten' })
   })
 
   it('at the very same moment over the same bare stretch: never both', async () => {
-    const results = await Promise.allSettled([send(mark([], clip.id, 0, 5000, tag(), newId)), send(mark([], clip.id, 4000, 9000, tag(), newId), crew)])
+    const results = await Promise.allSettled([send(mark([], clip.id, 0, 5000, tag(), newId)), send(mark([], clip.id, 4000, 9000, tag(), newId), ivo)])
     expect(results.filter(result => result.status === 'fulfilled')).toHaveLength(1)
     expect(results.find(result => result.status === 'rejected')).toMatchObject({ reason: { code: 'conflict', data: { reason: 'overlap' } } })
     expect(await list()).toHaveLength(1)
@@ -192,7 +193,7 @@ describe('two people', () => {
 
   it('may mark the same time of two cameras', async () => {
     await send(mark([], clip.id, 0, 5000, tag(), newId))
-    await send(mark([], second.id, 0, 5000, tag(), newId), crew)
+    await send(mark([], second.id, 0, 5000, tag(), newId), ivo)
     expect(await list()).toHaveLength(2)
   })
 
@@ -208,15 +209,69 @@ describe('two people', () => {
       })
     })
     try {
-      const seen = await marked(0, 5000, crew)
+      const seen = await marked(0, 5000, ivo)
       await expect(send(retag({ ...seen, version: 9 }, { operation: 'cut' }))).rejects.toMatchObject({ code: 'conflict' })
       await send(remove(seen))
       await arrived
-      expect(heard.map(({ kind, id, by }) => ({ kind, id, by }))).toEqual([{ kind: 'chapter', id: seen.id, by: crew.id }, { kind: 'chapter', id: seen.id, by: builder.id }])
+      expect(heard.map(({ kind, id, by }) => ({ kind, id, by }))).toEqual([{ kind: 'chapter', id: seen.id, by: ivo.id }, { kind: 'chapter', id: seen.id, by: builder.id }])
     }
     finally {
       await live.close()
     }
+  })
+})
+
+describe('crew', () => {
+  const pencil = (values = {}) => makeChapter(database.database, clip, { startMs: 20_000, endMs: 30_000, inking: 'pencilled', confidence: 0.5, ...values })
+  const refused = { code: 'forbidden', message: expect.stringContaining('Maud has inked this chapter') }
+
+  it('ink, retag, cut and delete what is pencilled', async () => {
+    await pencil()
+    await pencil({ startMs: 30_000, endMs: 40_000 })
+    const [first, next] = await list()
+    await send(retag(first!, { operation: 'paint' }), helper)
+    await send(mark(await list(), clip.id, 32_000, 34_000, tag(), newId), helper)
+    await send(remove((await list()).find(one => one.id === next!.id)!), helper)
+    expect(spans(await list())).toEqual([[20_000, 30_000], [32_000, 34_000], [34_000, 40_000]])
+  })
+
+  it('change and delete what they inked themselves, and take it back', async () => {
+    const own = await marked(0, 5000, helper)
+    expect(own.inkedBy).toEqual({ id: helper.id, name: 'Wren' })
+    const edit = remove(own)
+    const done = doneWith(edit, touchedBy(edit, await list()), await send(edit, helper))
+    await send(takeBack(done, await list())!, helper)
+    expect(await list()).toMatchObject([{ id: own.id, startMs: 0, endMs: 5000, inkedBy: { id: helper.id } }])
+  })
+
+  it('keep their ink when the builder trims it, and lose it when it is made pencil again', async () => {
+    const own = await marked(0, 5000, helper)
+    await send(moveEdge(await list(), own, 'end', 4000, 600_000)!)
+    expect((await list())[0]).toMatchObject({ updatedBy: 'Maud', inkedBy: { name: 'Wren' } })
+    await send(retag((await list())[0]!, { operation: 'cut' }), helper)
+    const [now] = await list()
+    await send({ label: '', put: [{ ...asPut(now!), inking: 'pencilled', confidence: 0.5 }], remove: [] })
+    expect((await list())[0]!.inkedBy).toBeNull()
+  })
+
+  it('do not change, cut back, pencil or delete what another person has inked; nothing of such an edit is kept', async () => {
+    const theirs = await marked(0, 5000)
+    await pencil()
+    const before = await list()
+    const edits = [
+      retag(theirs, { note: 'mine now' }), remove(theirs), split(theirs, 2000, newId)!, join(before, theirs)!, moveEdge(before, theirs, 'end', 6000, 600_000)!,
+      mark(before, clip.id, 4000, 25_000, tag(), newId), { label: '', put: [{ ...asPut(theirs), inking: 'pencilled' as const, confidence: 0.1 }], remove: [] },
+    ]
+    for (const edit of edits) await expect(send(edit, helper)).rejects.toMatchObject(refused)
+    expect(await list()).toEqual(before)
+  })
+
+  it('are told that a proposal was inked meanwhile, rather than offered to put theirs over it', async () => {
+    const row = await pencil()
+    const [seen] = await list()
+    await send(retag(seen!, { operation: 'paint' }))
+    await expect(send(retag(seen!, { operation: 'cut' }), helper)).rejects.toMatchObject(refused)
+    expect((await list()).find(one => one.id === row.id)).toMatchObject({ operation: 'paint' })
   })
 })
 

@@ -141,7 +141,7 @@ async function addChapters(database: Database, { buildId, userId, plan }: Settin
       const stepId = chapter.step === null ? null : plan.steps.find(step => step.number === chapter.step)!.id
       const [row] = await tx.insert(chapters).values({
         ...place, buildId, stepId, startMs: chapter.startMs, endMs: chapter.endMs, operation: chapter.operation, inking: chapter.state,
-        confidence: chapter.state === 'pencilled' ? chapter.confidence ?? 0.6 : null, note: chapter.note ?? '', createdBy: userId, updatedBy: userId,
+        confidence: chapter.state === 'pencilled' ? chapter.confidence ?? 0.6 : null, note: chapter.note ?? '', createdBy: userId, updatedBy: userId, inkedBy: chapter.state === 'pencilled' ? null : userId,
       }).returning({ id: chapters.id })
       const partIds = chapter.parts.map(name => plan.parts.find(part => part.name.toLowerCase() === name.toLowerCase())!.id)
       if (partIds.length) await tx.insert(chapterParts).values(partIds.map(partId => ({ chapterId: row!.id, partId })))

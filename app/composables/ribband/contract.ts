@@ -1,5 +1,6 @@
 import type { StepView } from '#shared/types/plan'
 import type { ChapterView, ClipView, CueView } from '#shared/types/session'
+import type { MayChange } from '#shared/utils/chapters/edits'
 import type { SnapPoint } from '#shared/utils/ribband/snap'
 
 /** What the ribband is given. Replace `cues` and `clips` rather than changing them in place. */
@@ -15,6 +16,8 @@ export interface RibbandProps {
   focusedClipId?: string | null
   /** For watching only: nothing can be moved or selected. */
   readOnly?: boolean
+  /** Chapters whose edges can be moved; without it, all. */
+  mayChange?: MayChange
 }
 
 /** In and out on the session's clock. */

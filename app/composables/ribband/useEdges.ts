@@ -1,7 +1,9 @@
 import { shallowRef, type ShallowRef } from 'vue'
+import type { ChapterView } from '#shared/types/session'
+import { apply, edgeRange, type MayChange, moveEdge } from '#shared/utils/chapters/edits'
 import { formatClock } from '#shared/utils/time/clock'
-import { edgeLimits, snap, snapPoints, SNAP_WORDS, type SnapPoint } from '#shared/utils/ribband/snap'
-import type { Strip, StripClip } from '#shared/utils/ribband/strip'
+import { snap, snapPoints, SNAP_WORDS, type SnapPoint } from '#shared/utils/ribband/snap'
+import type { Footage, StripClip } from '#shared/utils/ribband/strip'
 import { toClip } from '#shared/utils/ribband/clock'
 import { fromLine } from '#shared/utils/ribband/line'
 import type { EdgeMove } from './contract'
@@ -10,7 +12,10 @@ import type { Guide } from './drawing/drawOverlay'
 const SNAP_PX = 9
 
 interface EdgesInput {
-  strip: () => Strip
+  footage: () => Footage
+  /** As the page has them, without the edge in hand. */
+  chapters: () => readonly ChapterView[]
+  mayChange: MayChange
   msPerPx: () => number
   atMs: () => number
   moved: (move: EdgeMove) => void
@@ -22,22 +27,39 @@ export function useEdges(input: EdgesInput) {
   const guide: ShallowRef<Guide | null> = shallowRef(null)
   let forget: ReturnType<typeof setTimeout> | undefined
 
-  const chaptersOf = (clip: StripClip) => input.strip().planks[clip.lane]!.map(plank => plank.chapter)
-  const find = (chapterId: string) => input.strip().planks.flat().find(plank => plank.chapter.id === chapterId)
+  function find(chapterId: string): { chapter: ChapterView, clip: StripClip, lengthMs: number } | null {
+    const chapter = input.chapters().find(one => one.id === chapterId)
+    const clip = chapter && input.footage().byId.get(chapter.clipId)
+    return chapter && clip ? { chapter, clip, lengthMs: clip.endMs - clip.startMs } : null
+  }
 
-  function pointsOf(clip: StripClip, except?: string): SnapPoint[] {
+  function pointsOf(clip: StripClip, moved: { except?: string, butt?: number } = {}): SnapPoint[] {
     const at = input.atMs()
     const playheadMs = at >= clip.startMs && at <= clip.endMs ? at - clip.startMs : null
-    return snapPoints(clip.clip, clip.cues, chaptersOf(clip), { except, playheadMs })
+    return snapPoints(clip.clip, clip.cues, input.chapters(), { ...moved, playheadMs })
+  }
+
+  /** How far an edge can go, in ms of its clip: exactly as far as the edit takes it. */
+  function limits(chapterId: string, edge: 'start' | 'end'): { min: number, max: number } {
+    const found = find(chapterId)
+    return found ? edgeRange(input.chapters(), found.chapter, edge, found.lengthMs, input.mayChange) : { min: 0, max: 0 }
+  }
+
+  /** The chapters with the edge in hand where it stands, and the neighbour it pushes or takes along. */
+  function shown(): readonly ChapterView[] {
+    const held = preview.value
+    const found = held && find(held.chapterId)
+    const edit = found && moveEdge(input.chapters(), found.chapter, held.edge, held.clipMs, found.lengthMs, input.mayChange)
+    return edit ? apply(input.chapters(), edit) : input.chapters()
   }
 
   /** Moves an edge to a place of its clip; `free` does not snap. */
   function move(chapterId: string, edge: 'start' | 'end', clipMs: number, options: { done: boolean, free: boolean }) {
-    const plank = find(chapterId)
-    const clip = plank && input.strip().byId.get(plank.chapter.clipId)
-    if (!plank || !clip) return
-    const limits = edgeLimits(plank.chapter, edge, chaptersOf(clip), clip.endMs - clip.startMs)
-    const result = snap(clipMs, options.free ? [] : pointsOf(clip, chapterId), SNAP_PX * input.msPerPx(), limits)
+    const found = find(chapterId)
+    if (!found) return
+    const { chapter, clip } = found
+    const points = options.free ? [] : pointsOf(clip, { except: chapterId, butt: edge === 'start' ? chapter.startMs : chapter.endMs })
+    const result = snap(clipMs, points, SNAP_PX * input.msPerPx(), limits(chapterId, edge))
     const made: EdgeMove = { chapterId, edge, clipMs: result.ms, done: options.done, snapped: result.point }
     preview.value = made
     guide.value = options.done ? null : guideFor(clip, result.ms, result.point)
@@ -51,8 +73,7 @@ export function useEdges(input: EdgesInput) {
   function range(clip: StripClip, lineA: number, lineB: number, free: boolean): { startMs: number, endMs: number } {
     const points = free ? [] : pointsOf(clip)
     const tolerance = SNAP_PX * input.msPerPx()
-    const limits = { min: 0, max: clip.endMs - clip.startMs }
-    const [a, b] = [lineA, lineB].map(ms => snap(ms - clip.lineMs, points, tolerance, limits))
+    const [a, b] = [lineA, lineB].map(ms => snap(ms - clip.lineMs, points, tolerance, { min: 0, max: clip.endMs - clip.startMs }))
     guide.value = guideFor(clip, b!.ms, b!.point)
     return { startMs: Math.min(a!.ms, b!.ms), endMs: Math.max(a!.ms, b!.ms) }
   }
@@ -67,7 +88,7 @@ export function useEdges(input: EdgesInput) {
     preview.value = null
   }
 
-  return { preview, guide, move, range, settle, clipMsAt: (clip: StripClip, lineMs: number) => toClip(clip, fromLine(input.strip().line, lineMs)) }
+  return { preview, guide, limits, shown, move, range, settle, clipMsAt: (clip: StripClip, lineMs: number) => toClip(clip, fromLine(input.footage().line, lineMs)) }
 }
 
 export type Edges = ReturnType<typeof useEdges>

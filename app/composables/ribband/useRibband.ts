@@ -36,15 +36,13 @@ export function useRibband(props: RibbandProps, size: { width: Ref<number>, narr
     return layFootage(props.clips.map(followed), toRaw(props.cues))
   })
   const view = useStripView(() => footage.value, () => size.width.value, () => props.atMs)
-  const edges = useEdges({ strip: () => strip.value, msPerPx: () => view.view.value.msPerPx, atMs: () => props.atMs, moved: sends.moveEdge })
-
-  const strip: ComputedRef<Strip> = computed(() => {
-    const held = edges.preview.value
-    const chapters = held === null
-      ? props.chapters
-      : props.chapters.map(chapter => chapter.id === held.chapterId ? { ...chapter, [held.edge === 'start' ? 'startMs' : 'endMs']: held.clipMs } : chapter)
-    return { ...footage.value, ...layChapters(footage.value, chapters, props.steps) }
+  const edges = useEdges({
+    chapters: () => props.chapters, mayChange: chapter => props.mayChange?.(chapter) ?? true,
+    footage: () => footage.value, msPerPx: () => view.view.value.msPerPx, atMs: () => props.atMs, moved: sends.moveEdge,
   })
+
+  const planking = computed(() => layChapters(footage.value, edges.shown(), props.steps))
+  const strip: ComputedRef<Strip> = computed(() => ({ ...footage.value, ...planking.value }))
   watch(() => props.chapters, () => {
     if (edges.preview.value?.done) edges.settle()
   })
@@ -53,7 +51,7 @@ export function useRibband(props: RibbandProps, size: { width: Ref<number>, narr
   const layout = computed(() => layoutStrip(footage.value.lanes.length, size.width.value, size.narrow.value))
   const actions = useStripActions({
     strip: () => strip.value, layout: () => layout.value, view: () => view.view.value, edges,
-    preferredLane: () => preferredLane.value, selection: () => props.selection ?? null, readOnly: () => props.readOnly === true,
+    preferredLane: () => preferredLane.value, selection: () => props.selection ?? null, readOnly: () => props.readOnly === true, mayChange: chapter => props.mayChange?.(chapter) ?? true,
     seek: sends.seek, selectChapter: sends.selectChapter, selectRange: sends.selectRange,
   })
 

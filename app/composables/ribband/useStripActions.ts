@@ -1,4 +1,5 @@
 import { shallowRef } from 'vue'
+import type { MayChange } from '#shared/utils/chapters/edits'
 import { clipAt, nearestClip, toClip } from '#shared/utils/ribband/clock'
 import { fromLine, toLine } from '#shared/utils/ribband/line'
 import { zoneAt, type StripLayout } from '#shared/utils/ribband/layout'
@@ -20,6 +21,7 @@ interface ActionsInput {
   preferredLane: () => number
   selection: () => SessionRange | null
   readOnly: () => boolean
+  mayChange: MayChange
   edges: Edges
   seek: (sessionMs: number, clipId: string) => void
   selectChapter: (id: string) => void
@@ -57,7 +59,7 @@ export function useStripActions(input: ActionsInput) {
     const planks = input.strip().planks[at.lane] ?? []
     for (const x of [point.x, point.x - EDGE_PX, point.x + EDGE_PX]) {
       const plank = plankAt(planks, fromX(view, x))
-      if (!plank) continue
+      if (!plank || !input.mayChange(plank.chapter)) continue
       if (Math.abs(toX(view, plank.startMs) - point.x) <= reach(plank)) return { plank, edge: 'start' }
       if (Math.abs(toX(view, plank.endMs) - point.x) <= reach(plank)) return { plank, edge: 'end' }
     }

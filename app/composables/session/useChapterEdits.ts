@@ -5,6 +5,7 @@ import type { ChapterView } from '#shared/types/session'
 import { apply, type Edit } from '#shared/utils/chapters/edits'
 import { alreadyDone, type Changed, cuttingBack, overTheirs } from '#shared/utils/chapters/conflicts'
 import { asChanges, doneWith, type Done, merge, onTopOf, type Outcome, restamp, takeBack, touchedBy } from '#shared/utils/chapters/history'
+import { forbiddenIn, forbiddenWords, type Hand, mayChange } from '#shared/utils/chapters/rights'
 import { changeWords, chapterName } from '#shared/utils/chapters/words'
 
 type Kind = 'do' | 'undo' | 'redo'
@@ -15,7 +16,7 @@ export type Conflict = { waiting: Waiting, problem: string } & ({ reason: 'chang
 
 interface Input {
   sessionId: string
-  me: () => string | undefined
+  me: () => Hand
   steps: () => StepView[]
   /** For the live region. */
   say: (words: string) => void
@@ -197,8 +198,19 @@ export function useChapterEdits({ sessionId, me, steps, say }: Input) {
 
   /** Somebody, perhaps in another window of one's own, changed a chapter. */
   function hear(event: { id: string, by?: string | null }): void {
-    if (event.by !== me()) heard.add(event.id)
+    if (event.by !== me().id) heard.add(event.id)
     void rereadSoon()
+  }
+
+  /** By the chapter as the server has it: what is still on its way is one's own. */
+  function mayBeChanged(chapter: Pick<ChapterView, 'id'>): boolean {
+    const kept = base.value.find(one => one.id === chapter.id)
+    return !kept || mayChange(kept, me())
+  }
+  /** Why an edit would be refused for whose chapters it changes; null when it would not. */
+  function refusal(edit: Pick<Edit, 'put' | 'remove'>): string | null {
+    const [other] = forbiddenIn(edit, base.value, me())
+    return other ? forbiddenWords(other) : null
   }
 
   return {
@@ -206,7 +218,7 @@ export function useChapterEdits({ sessionId, me, steps, say }: Input) {
     saving: computed(() => queue.value.length > 0),
     undoLabel: computed(() => undoable.value.at(-1)?.edit.label ?? null),
     redoLabel: computed(() => redoable.value.at(-1)?.edit.label ?? null),
-    run, undo: () => reverse('undo'), redo: () => reverse('redo'), resolve, tryAgain, forgetUnsent, hear, rereadSoon,
+    run, undo: () => reverse('undo'), redo: () => reverse('redo'), resolve, tryAgain, forgetUnsent, hear, rereadSoon, mayBeChanged, refusal,
     nameOf: (chapter: Pick<ChapterView, 'stepId' | 'operation'>) => chapterName(chapter, steps()),
   }
 }

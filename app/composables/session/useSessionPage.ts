@@ -32,7 +32,7 @@ export function useSessionPage(buildId: string, sessionId: string) {
   const steps = computed(() => plan.data.value?.steps ?? [])
   const parts = computed(() => plan.data.value?.parts ?? [])
 
-  const edits = useChapterEdits({ sessionId, me: () => account.value?.id, steps: () => steps.value, say })
+  const edits = useChapterEdits({ sessionId, me: () => ({ id: account.value?.id, role: session.value?.role ?? null }), steps: () => steps.value, say })
   const captions = useCaptions(sessionId, () => session.value?.tracks ?? [])
   const player = usePlayer(() => clips.value)
   const marks = useMarks(player, { cues: () => captions.cues.value, chapters: () => edits.chapters.value, say })

@@ -1,6 +1,6 @@
 import { computed, ref, shallowRef } from 'vue'
 import type { ChapterView } from '#shared/types/session'
-import { inkedInTheWay, ink, join, mark, moveEdge, nextOf, remove, retag, split, type Tag } from '#shared/utils/chapters/edits'
+import { type Edit, inkedInTheWay, ink, join, mark, moveEdge, nextOf, remove, retag, split, type Tag } from '#shared/utils/chapters/edits'
 import { lengthWords } from '#shared/utils/chapters/words'
 import { formatClock } from '#shared/utils/timecode'
 import type { Player } from '../player/usePlayer'
@@ -35,14 +35,31 @@ export function useTagging({ player, edits, marks, buildId, say }: Input) {
   const here = computed(() => edits.chapters.value.find(one => one.clipId === player.clipId.value && one.startMs <= player.clipMs.value && player.clipMs.value < one.endMs) ?? null)
   /** What a key acts on: the one selected, else the one under the playhead. */
   const subject = computed(() => selected.value ?? here.value)
+  /** The subject, if whoever asks may change it. */
+  const changeable = computed(() => subject.value && edits.mayBeChanged(subject.value) ? subject.value : null)
+
+  /** Runs an edit and says what it did, unless it would change what somebody else has inked. */
+  async function attempt(edit: Edit, label: string, words: string): Promise<boolean> {
+    if (refused(edit)) return false
+    say(words)
+    return edits.run({ ...edit, label })
+  }
+  function refused(edit: Pick<Edit, 'put' | 'remove'>): boolean {
+    const why = edits.refusal(edit)
+    if (why) notice({ kind: 'note', text: why })
+    return why !== null
+  }
 
   function open(range?: MarkedRange): void {
     const stretch = range ?? marks.range.value
     if (stretch) {
+      // Told before anything is chosen, not after.
+      if (refused({ put: [], remove: inkedInTheWay(edits.chapters.value, stretch.clipId, stretch.startMs, stretch.endMs) })) return
       player.pause()
       picking.value = { kind: 'mark', range: stretch }
     }
     else if (subject.value) {
+      if (refused(remove(subject.value))) return
       player.pause()
       selectedId.value = subject.value.id
       picking.value = { kind: 'retag', chapter: subject.value }
@@ -66,19 +83,18 @@ export function useTagging({ player, edits, marks, buildId, say }: Input) {
       action: 'Mark over it', danger: false,
     })) return
     const edit = mark(edits.chapters.value, clipId, startMs, endMs, tag, newId)
-    const made = edit.put.at(-1)!
+    if (refused(edit)) return
     marks.clear()
-    selectedId.value = made.id
-    say(`Chapter marked: ${edits.nameOf(tag)}, ${lengthWords(endMs - startMs)}`)
-    await edits.run({ ...edit, label: `Mark ${edits.nameOf(tag)}` })
+    selectedId.value = edit.put.at(-1)!.id
+    await attempt(edit, `Mark ${edits.nameOf(tag)}`, `Chapter marked: ${edits.nameOf(tag)}, ${lengthWords(endMs - startMs)}`)
   }
 
   async function change(chapter: ChapterView, tag: Partial<Tag> & { note?: string }): Promise<void> {
     // Its newest state: it may have been moved while the picker was open.
     const now = edits.chapters.value.find(one => one.id === chapter.id) ?? chapter
     const edit = retag(now, tag)
-    say(tag.note === undefined ? `Chapter is now ${edits.nameOf(edit.put[0]!)}` : 'Note kept')
-    await edits.run({ ...edit, label: tag.note === undefined ? `Retag as ${edits.nameOf(edit.put[0]!)}` : 'Change note' })
+    if (tag.note === undefined) await attempt(edit, `Retag as ${edits.nameOf(edit.put[0]!)}`, `Chapter is now ${edits.nameOf(edit.put[0]!)}`)
+    else await attempt(edit, 'Change note', 'Note kept')
   }
 
   function leave(): void {
@@ -112,31 +128,30 @@ export function useTagging({ player, edits, marks, buildId, say }: Input) {
   const splitHere = () => withSubject('split', (chapter) => {
     const edit = chapter.clipId === player.clipId.value ? split(chapter, Math.round(player.clipMs.value), newId) : null
     if (!edit) return notice({ kind: 'note', text: 'Put the playhead inside the chapter, away from its ends, to split it there.' })
+    if (refused(edit)) return
     selectedId.value = edit.put[1]!.id
-    say(`Split at ${formatClock(player.atMs.value, { tenths: true })}`)
-    void edits.run({ ...edit, label: `Split ${edits.nameOf(chapter)}` })
+    void attempt(edit, `Split ${edits.nameOf(chapter)}`, `Split at ${formatClock(player.atMs.value, { tenths: true })}`)
   })
   const joinNext = () => withSubject('join', async (chapter) => {
     const next = nextOf(edits.chapters.value, chapter)
     const edit = join(edits.chapters.value, chapter)
     if (!next || !edit) return notice({ kind: 'note', text: 'This is the last chapter of its clip: there is none to join it with.' })
+    if (refused(edit)) return
     const gap = next.startMs - chapter.endMs
     const differs = next.inking === 'inked' && (next.stepId !== chapter.stepId || next.operation !== chapter.operation)
     if ((gap > 10_000 || differs) && !await confirm({ title: 'Join with the next chapter?', message: `${gap > 10_000 ? `The ${lengthWords(gap)} between them come with it. ` : ''}Both become ${edits.nameOf(chapter)}. It can be undone.`, action: 'Join', danger: false })) return
-    say(`Joined into ${edits.nameOf(chapter)}`)
-    void edits.run({ ...edit, label: `Join ${edits.nameOf(chapter)}` })
+    void attempt(edit, `Join ${edits.nameOf(chapter)}`, `Joined into ${edits.nameOf(chapter)}`)
   })
   const deleteIt = () => withSubject('delete', async (chapter) => {
+    if (refused(remove(chapter))) return
     if (selectedId.value === chapter.id) selectedId.value = null
-    say(`Deleted ${edits.nameOf(chapter)}`)
-    if (await edits.run({ ...remove(chapter), label: `Delete ${edits.nameOf(chapter)}` })) {
+    if (await attempt(remove(chapter), `Delete ${edits.nameOf(chapter)}`, `Deleted ${edits.nameOf(chapter)}`)) {
       notice({ kind: 'note', text: `Deleted: ${edits.nameOf(chapter)}.`, action: { label: 'Undo', run: edits.undo } })
     }
   })
   const inkIt = () => withSubject('ink', (chapter) => {
     if (chapter.inking === 'inked') return say('This chapter is inked already')
-    say(`Inked ${edits.nameOf(chapter)}`)
-    void edits.run({ ...ink([chapter]), label: `Ink ${edits.nameOf(chapter)}` })
+    void attempt(ink([chapter]), `Ink ${edits.nameOf(chapter)}`, `Inked ${edits.nameOf(chapter)}`)
   })
   const pencilled = computed(() => edits.chapters.value.filter(one => one.inking === 'pencilled'))
   async function inkAll(): Promise<void> {
@@ -144,23 +159,23 @@ export function useTagging({ player, edits, marks, buildId, say }: Input) {
     if (list.length && await confirm({ title: `Ink ${list.length === 1 ? 'one chapter' : `${list.length} chapters`}?`, message: 'You say that they are right as proposed. Inked chapters can be published. It can be undone.', action: 'Ink all', danger: false })) await edits.run(ink(list))
   }
 
-  function edgeTo(chapter: ChapterView, edge: 'start' | 'end', clipMs: number): void {
+  function edgeTo(chapter: ChapterView, edge: 'start' | 'end', clipMs: number, words: string): void {
     const clip = player.placed.value.find(one => one.id === chapter.clipId)
-    const edit = clip && moveEdge(edits.chapters.value, chapter, edge, clipMs, clip.endMs - clip.startMs)
-    if (edit) void edits.run({ ...edit, label: `Move an edge of ${edits.nameOf(chapter)}` })
+    if (refused(remove(chapter))) return
+    const edit = clip && moveEdge(edits.chapters.value, chapter, edge, clipMs, clip.endMs - clip.startMs, edits.mayBeChanged)
+    if (edit) void attempt(edit, `Move an edge of ${edits.nameOf(chapter)}`, words)
   }
   function moveEdgeOf(id: string, edge: 'start' | 'end', clipMs: number): void {
     const chapter = edits.chapters.value.find(one => one.id === id)
-    if (chapter) edgeTo(chapter, edge, clipMs)
+    if (chapter) edgeTo(chapter, edge, clipMs, 'Edge moved')
   }
   const edgeHere = (edge: 'start' | 'end') => withSubject('trim', (chapter) => {
     const ms = Math.round(player.clipMs.value)
     if (chapter.clipId !== player.clipId.value || (edge === 'start' ? ms >= chapter.endMs : ms <= chapter.startMs)) return notice({ kind: 'note', text: 'The playhead is not on this chapter’s footage, or on the wrong side of it.' })
-    edgeTo(chapter, edge, ms)
-    say(`Chapter ${edge === 'start' ? 'begins' : 'ends'} here now`)
+    edgeTo(chapter, edge, ms, `Chapter ${edge === 'start' ? 'begins' : 'ends'} here now`)
   })
 
-  return { picking, selectedId, selected, here, subject, inOrder, pencilled, open, finish, leave, change, select, visit, step, splitHere, joinNext, deleteIt, inkIt, inkAll, moveEdgeOf, edgeHere }
+  return { picking, selectedId, selected, here, subject, changeable, mayBeChanged: edits.mayBeChanged, inOrder, pencilled, open, finish, leave, change, select, visit, step, splitHere, joinNext, deleteIt, inkIt, inkAll, moveEdgeOf, edgeHere }
 }
 
 export type Tagging = ReturnType<typeof useTagging>

@@ -36,6 +36,8 @@ export const chapters = pgTable('chapters', {
   /** Raised by every change; a change that names an older number is refused. */
   version: integer('version').notNull().default(1),
   createdBy: uuid('created_by').references(() => users.id, { onDelete: 'set null' }),
+  /** Whose ink it is: crew may change no other person's. Null while pencilled. */
+  inkedBy: uuid('inked_by').references(() => users.id, { onDelete: 'set null' }),
   updatedBy: uuid('updated_by').references(() => users.id, { onDelete: 'set null' }),
   ...timestamps,
 }, table => [

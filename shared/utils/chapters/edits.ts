@@ -18,7 +18,7 @@ export const SHORTEST_CHAPTER_MS = 200
 export type Tag = Pick<ChapterPut, 'stepId' | 'operation' | 'partIds'>
 
 export function asPut(view: ChapterView, changes: Partial<ChapterPut> = {}): ChapterPut {
-  const { updatedBy: _, ...rest } = view
+  const { updatedBy: _updatedBy, inkedBy: _inkedBy, ...rest } = view
   return { ...rest, ...changes }
 }
 
@@ -82,33 +82,57 @@ export function remove(chapter: ChapterView): Edit {
   return { label: 'Delete chapter', put: [], remove: [chapter] }
 }
 
+/** What an edge may not push: the chapters that whoever moves it may not change. */
+export type MayChange = (chapter: ChapterView) => boolean
+const anyChapter: MayChange = () => true
+
+/** The chapter that an edge looks towards. */
+function neighbourAt(chapters: readonly ChapterView[], chapter: ChapterView, edge: 'start' | 'end'): ChapterView | undefined {
+  return edge === 'start' ? previousOf(chapters, chapter) : nextOf(chapters, chapter)
+}
+
+/**
+ * How far an edge can go, in ms of the clip, both ends included: into its neighbour until that is as short as a
+ * chapter may be (up to it, where it may not be changed), and towards its own other edge as far. An edge with no
+ * room at all stays: both ends are its place.
+ */
+export function edgeRange(chapters: readonly ChapterView[], chapter: ChapterView, edge: 'start' | 'end', clipEndMs: number, mayChange = anyChapter): { min: number, max: number } {
+  const neighbour = neighbourAt(chapters, chapter, edge)
+  const pushes = neighbour && mayChange(neighbour)
+  const place = edge === 'start' ? chapter.startMs : chapter.endMs
+  const range = edge === 'start'
+    ? { min: neighbour ? (pushes ? neighbour.startMs + SHORTEST_CHAPTER_MS : neighbour.endMs) : 0, max: chapter.endMs - SHORTEST_CHAPTER_MS }
+    : { min: chapter.startMs + SHORTEST_CHAPTER_MS, max: neighbour ? (pushes ? neighbour.endMs - SHORTEST_CHAPTER_MS : neighbour.startMs) : clipEndMs }
+  return range.min > range.max ? { min: place, max: place } : range
+}
+
 /**
  * Moves one edge. A neighbour that touches moves with it (the butt stays closed); one further off is only
- * pushed when reached, and never to less than the shortest chapter: the edge stops there.
+ * pushed when reached, and never to less than the shortest chapter: the edge stops there. One that may not be
+ * changed stays where it is.
  */
-export function moveEdge(chapters: ChapterView[], chapter: ChapterView, edge: 'start' | 'end', toMs: number, clipEndMs: number): Edit | null {
-  const neighbour = edge === 'start' ? previousOf(chapters, chapter) : nextOf(chapters, chapter)
-  const touches = neighbour && (edge === 'start' ? neighbour.endMs === chapter.startMs : neighbour.startMs === chapter.endMs)
-  const low = edge === 'start' ? (neighbour ? neighbour.startMs + SHORTEST_CHAPTER_MS : 0) : chapter.startMs + SHORTEST_CHAPTER_MS
-  const high = edge === 'start' ? chapter.endMs - SHORTEST_CHAPTER_MS : (neighbour ? neighbour.endMs - SHORTEST_CHAPTER_MS : clipEndMs)
-  const ms = Math.round(Math.min(high, Math.max(low, toMs)))
-  if (low > high || ms === (edge === 'start' ? chapter.startMs : chapter.endMs)) return null
+export function moveEdge(chapters: readonly ChapterView[], chapter: ChapterView, edge: 'start' | 'end', toMs: number, clipEndMs: number, mayChange = anyChapter): Edit | null {
+  const { min, max } = edgeRange(chapters, chapter, edge, clipEndMs, mayChange)
+  const ms = Math.round(Math.min(max, Math.max(min, toMs)))
+  if (ms === (edge === 'start' ? chapter.startMs : chapter.endMs)) return null
   const put = [asPut(chapter, edge === 'start' ? { startMs: ms, ...inked } : { endMs: ms, ...inked })]
-  if (neighbour && edge === 'start' && (touches || neighbour.endMs > ms)) put.push(asPut(neighbour, { endMs: ms }))
-  if (neighbour && edge === 'end' && (touches || neighbour.startMs < ms)) put.push(asPut(neighbour, { startMs: ms }))
+  const neighbour = neighbourAt(chapters, chapter, edge)
+  if (!neighbour || !mayChange(neighbour)) return { label: 'Move edge', put, remove: [] }
+  if (edge === 'start' && (neighbour.endMs === chapter.startMs || neighbour.endMs > ms)) put.push(asPut(neighbour, { endMs: ms }))
+  if (edge === 'end' && (neighbour.startMs === chapter.endMs || neighbour.startMs < ms)) put.push(asPut(neighbour, { startMs: ms }))
   return { label: 'Move edge', put, remove: [] }
 }
 
-export function nextOf(chapters: ChapterView[], chapter: ChapterView): ChapterView | undefined {
+export function nextOf(chapters: readonly ChapterView[], chapter: ChapterView): ChapterView | undefined {
   return chapters.filter(one => one.clipId === chapter.clipId && one.startMs >= chapter.endMs).sort((a, b) => a.startMs - b.startMs)[0]
 }
 
-export function previousOf(chapters: ChapterView[], chapter: ChapterView): ChapterView | undefined {
+export function previousOf(chapters: readonly ChapterView[], chapter: ChapterView): ChapterView | undefined {
   return chapters.filter(one => one.clipId === chapter.clipId && one.endMs <= chapter.startMs).sort((a, b) => b.endMs - a.endMs)[0]
 }
 
 /** Chapters after an edit, as the page shows them before the server has answered. */
-export function apply(chapters: ChapterView[], edit: Pick<Edit, 'put' | 'remove'>): ChapterView[] {
+export function apply(chapters: readonly ChapterView[], edit: Pick<Edit, 'put' | 'remove'>): ChapterView[] {
   const gone = new Set(edit.remove.map(one => one.id))
   const put = new Map(edit.put.map(one => [one.id, one]))
   const kept = chapters.filter(one => !gone.has(one.id)).map((one) => {
@@ -116,7 +140,7 @@ export function apply(chapters: ChapterView[], edit: Pick<Edit, 'put' | 'remove'
     put.delete(one.id)
     return next ? { ...one, ...next, version: one.version } : one
   })
-  const fresh = [...put.values()].map(one => ({ ...one, version: one.version ?? 0, updatedBy: null }))
+  const fresh = [...put.values()].map(one => ({ ...one, version: one.version ?? 0, inkedBy: null, updatedBy: null }))
   return [...kept, ...fresh].sort((a, b) => a.clipId.localeCompare(b.clipId) || a.startMs - b.startMs)
 }
 

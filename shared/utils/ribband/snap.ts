@@ -24,13 +24,15 @@ interface SnapCue { clipId: string, startMs: number, endMs: number }
 
 /**
  * All times of a clip that an edge may snap to, in order. Of several kinds within the same millisecond the
- * first of SNAP_KINDS stays. `except` is the chapter whose edge is moved: it does not snap to itself.
+ * first of SNAP_KINDS stays. `except` is the chapter whose edge is moved: it does not snap to itself, nor to
+ * `butt`, where a neighbour meets it now and moves along.
  */
-export function snapPoints(clip: SnapClip, cues: readonly SnapCue[], chapters: readonly SnapChapter[], also: { except?: string, playheadMs?: number | null } = {}): SnapPoint[] {
+export function snapPoints(clip: SnapClip, cues: readonly SnapCue[], chapters: readonly SnapChapter[], also: { except?: string, butt?: number, playheadMs?: number | null } = {}): SnapPoint[] {
   const end = clip.durationMs ?? 0
   const found: SnapPoint[] = [{ ms: 0, kind: 'clip' }, { ms: end, kind: 'clip' }]
   for (const chapter of chapters) {
-    if (chapter.clipId === clip.id && chapter.id !== also.except) found.push({ ms: chapter.startMs, kind: 'neighbour' }, { ms: chapter.endMs, kind: 'neighbour' })
+    if (chapter.clipId !== clip.id || chapter.id === also.except) continue
+    for (const ms of [chapter.startMs, chapter.endMs]) if (ms !== also.butt) found.push({ ms, kind: 'neighbour' })
   }
   for (const cue of cues) {
     if (cue.clipId === clip.id) found.push({ ms: cue.startMs, kind: 'cue-start' }, { ms: cue.endMs, kind: 'cue-end' })
@@ -57,19 +59,4 @@ export function snap(ms: number, points: readonly SnapPoint[], toleranceMs: numb
     if (best === null || Math.abs(point.ms - ms) < Math.abs(best.ms - ms)) best = point
   }
   return best ? { ms: best.ms, point: best } : { ms: held, point: null }
-}
-
-/** Shortest chapter that a drag leaves: shorter can hardly be seen or taken hold of again. */
-export const LEAST_CHAPTER_MS = 200
-
-/** How far an edge can go: to its neighbour, the clip's end, or LEAST_CHAPTER_MS from its own other edge. */
-export function edgeLimits(chapter: SnapChapter, edge: 'start' | 'end', chapters: readonly SnapChapter[], durationMs: number): { min: number, max: number } {
-  const least = Math.min(LEAST_CHAPTER_MS, chapter.endMs - chapter.startMs)
-  const others = chapters.filter(other => other.clipId === chapter.clipId && other.id !== chapter.id)
-  if (edge === 'start') {
-    const before = others.filter(other => other.endMs <= chapter.startMs).map(other => other.endMs)
-    return { min: Math.max(0, ...before), max: chapter.endMs - least }
-  }
-  const after = others.filter(other => other.startMs >= chapter.endMs).map(other => other.startMs)
-  return { min: chapter.startMs + least, max: Math.min(durationMs, ...after) }
 }

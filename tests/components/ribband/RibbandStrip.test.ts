@@ -87,16 +87,28 @@ describe('the playhead', () => {
 })
 
 describe('edges', () => {
-  it('of the selected chapter are sliders that stop at the neighbour', async () => {
+  const startOfB = '[aria-label="Start of step 7, Glue the transom"]'
+  it('of the selected chapter are sliders, and the neighbour that meets one moves along', async () => {
     const wrapper = await strip({ selectedChapterId: 'b' })
-    const start = wrapper.get('[aria-label="Start of step 7, Glue the transom"]')
-    expect(start.attributes('aria-valuetext')).toBe('0:20.0')
-    await start.trigger('keydown', { key: 'ArrowLeft' })
-    await start.trigger('keydown', { key: 'ArrowRight' })
+    const start = wrapper.get(startOfB)
+    expect(start.attributes()).toMatchObject({ 'aria-valuetext': '0:20.0', 'aria-valuemin': '5200', 'aria-valuemax': '49800' })
+    await start.trigger('keydown', { key: 'PageDown' })
+    expect(option(wrapper, 'a').attributes('aria-label')).toContain('0:05 to 0:19')
+    expect(option(wrapper, 'b').attributes('aria-label')).toContain('0:19 to 0:50')
+    await start.trigger('keydown', { key: 'Home' })
+    expect(option(wrapper, 'a').attributes('aria-label')).toContain('0:05 to 0:05')
     expect(wrapper.emitted('move-edge')!.map(([move]) => move)).toEqual([
-      { chapterId: 'b', edge: 'start', clipMs: 20_000, done: true, snapped: null },
-      { chapterId: 'b', edge: 'start', clipMs: 20_100, done: true, snapped: null },
+      { chapterId: 'b', edge: 'start', clipMs: 19_000, done: true, snapped: null },
+      { chapterId: 'b', edge: 'start', clipMs: 5200, done: true, snapped: null },
     ])
+  })
+
+  it('stop at a neighbour that may not be changed, and are not there on one that may not', async () => {
+    const wrapper = await strip({ selectedChapterId: 'b', mayChange: (chapter: { id: string }) => chapter.id !== 'a' })
+    await wrapper.get(startOfB).trigger('keydown', { key: 'ArrowLeft' })
+    expect(wrapper.emitted('move-edge')![0]).toMatchObject([{ clipMs: 20_000 }])
+    await wrapper.setProps({ selectedChapterId: 'a' })
+    expect(wrapper.findAll('[data-grip=start], [data-grip=end]')).toHaveLength(0)
   })
 
   it('of the selection move its in and out points within the clip', async () => {

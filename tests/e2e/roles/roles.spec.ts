@@ -1,3 +1,4 @@
+import { randomUUID } from 'node:crypto'
 import { request, type APIRequestContext } from '@playwright/test'
 import type { DatabaseHandle } from '#server/database/client'
 import { expect, test } from '../../support/browser'
@@ -89,6 +90,18 @@ test('a cookie is worth nothing once the account\'s epoch has moved on', async (
   await handle.pool.query('update users set session_epoch = session_epoch + 1 where id = $1', [people.crew.id])
   expect((await context.get('/api/builds')).status()).toBe(401)
   await context.dispose()
+})
+
+test('crew delete their own ink and what is pencilled, and nobody else\'s ink', async () => {
+  const f = fixtures.private
+  const change = async (asker: 'builder' | 'crew', body: unknown) => (await askers[asker].post(`/api/sessions/${f.session.id}/chapters`, { data: body })).status()
+  const put = (inking: string) => ({ id: randomUUID(), clipId: f.clip.id, ...f.freeSpan(), stepId: null, operation: 'cut', partIds: [], inking, version: null })
+  for (const [by, inking, answer] of [['builder', 'inked', 403], ['builder', 'pencilled', 200], ['crew', 'inked', 200]] as const) {
+    const made = put(inking)
+    expect(await change(by, { put: [made] })).toBe(200)
+    expect(await change('crew', { remove: [{ id: made.id, version: 1 }] })).toBe(answer)
+    if (answer === 403) expect(await change('builder', { remove: [{ id: made.id, version: 1 }] })).toBe(200)
+  }
 })
 
 test('an unknown address and a wrong password get the same answer', async () => {

@@ -5,7 +5,7 @@ import { chapterChangesSchema } from '#shared/schemas/chapters'
 export default apiHandler(async (event) => {
   const sessionId = routeId(event, 'session')
   const account = await requireAccount(event)
-  await requireBuild(db(), account.id, 'session', sessionId, 'work')
+  const { role } = await requireBuild(db(), account.id, 'session', sessionId, 'work')
   const changes = await readBodyAs(event, chapterChangesSchema)
-  return changeChapters(db(), sessionId, account.id, changes)
+  return changeChapters(db(), sessionId, { id: account.id, role }, changes)
 })

@@ -1,12 +1,12 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import type { ChapterView } from '#shared/types/session'
-import { apply, inkedInTheWay, inverse, join, mark, moveEdge, retag, SHORTEST_CHAPTER_MS, split } from '#shared/utils/chapters/edits'
+import { apply, edgeRange, inkedInTheWay, inverse, join, mark, moveEdge, retag, SHORTEST_CHAPTER_MS, split } from '#shared/utils/chapters/edits'
 
 let serial = 0
 const newId = () => `new-${++serial}`
 const chapter = (id: string, startMs: number, endMs: number, more: Partial<ChapterView> = {}): ChapterView => ({
-  id, clipId: 'clip', startMs, endMs, stepId: 'step', operation: 'glue', partIds: [], inking: 'inked', confidence: null, evidence: [], note: '', version: 1, updatedBy: null, ...more,
+  id, clipId: 'clip', startMs, endMs, stepId: 'step', operation: 'glue', partIds: [], inking: 'inked', confidence: null, evidence: [], note: '', version: 1, inkedBy: null, updatedBy: null, ...more,
 })
 const tag = { stepId: 'other', operation: 'fasten' as const, partIds: [] }
 const spans = (chapters: ChapterView[]) => chapters.map(one => [one.startMs, one.endMs])
@@ -52,6 +52,29 @@ describe('moveEdge', () => {
   it('leaves a neighbour across a gap until it is reached', () => {
     expect(spans(apply(before, moveEdge(before, before[1]!, 'end', 8500, 12_000)!))[1]).toEqual([4000, 8500])
     expect(spans(apply(before, moveEdge(before, before[1]!, 'end', 10_000, 12_000)!)).slice(1)).toEqual([[4000, 10_000], [10_000, 12_000]])
+  })
+  it('pushes a neighbour until it is as short as a chapter may be', () => {
+    expect(edgeRange(before, before[1]!, 'start', 12_000)).toEqual({ min: SHORTEST_CHAPTER_MS, max: 8000 - SHORTEST_CHAPTER_MS })
+    expect(edgeRange(before, before[1]!, 'end', 12_000)).toEqual({ min: 4000 + SHORTEST_CHAPTER_MS, max: 12_000 - SHORTEST_CHAPTER_MS })
+    expect(spans(apply(before, moveEdge(before, before[1]!, 'start', -5, 12_000)!))[0]).toEqual([0, SHORTEST_CHAPTER_MS])
+  })
+  it('stops at a neighbour that may not be changed, and comes away from it alone', () => {
+    const mayChange = (one: ChapterView) => one.id !== 'a'
+    expect(edgeRange(before, before[1]!, 'start', 12_000, mayChange)).toEqual({ min: 4000, max: 8000 - SHORTEST_CHAPTER_MS })
+    expect(moveEdge(before, before[1]!, 'start', 3000, 12_000, mayChange)).toBeNull()
+    expect(moveEdge(before, before[1]!, 'start', 5000, 12_000, mayChange)!.put.map(one => one.id)).toEqual(['b'])
+  })
+  it('goes exactly as far as its range says, and stays where it has no room', () => {
+    const cuts = fc.uniqueArray(fc.nat(20_000), { minLength: 4, maxLength: 12 }).map(list => list.sort((a, b) => a - b))
+    fc.assert(fc.property(cuts, fc.nat(), fc.integer({ min: -500, max: 21_000 }), fc.constantFrom('start' as const, 'end' as const), (times, pick, at, edge) => {
+      const list = Array.from({ length: times.length - 1 }, (_, i) => chapter(`${i}`, times[i]!, times[i + 1]!)).filter((_, i) => i % 3 !== 2)
+      const one = list[pick % list.length]!
+      const { min, max } = edgeRange(list, one, edge, 20_000)
+      const after = apply(list, moveEdge(list, one, edge, at, 20_000) ?? { put: [], remove: [] })
+      const moved = after.find(other => other.id === one.id)!
+      expect(edge === 'start' ? moved.startMs : moved.endMs).toBe(Math.min(max, Math.max(min, at)))
+      expect(overlapping(after)).toBe(false)
+    }))
   })
   it('stops at the clip\'s end', () => {
     expect(moveEdge(before, before[2]!, 'end', 99_000, 12_500)!.put[0]!.endMs).toBe(12_500)
