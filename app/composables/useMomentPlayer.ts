@@ -1,4 +1,5 @@
 import type { MomentHit } from '#shared/types/search'
+import { frameFrom, seekSeconds } from '#shared/utils/player/follow'
 
 /** Clips kept open at once: the one that is watched and the likeliest next. */
 const OPEN = 6
@@ -37,7 +38,7 @@ export function useMomentPlayer() {
   async function ready(moment: MomentHit) {
     if (moment.clip.id === current.value?.clip.id || !open(moment)) return
     await nextTick()
-    seek(videos.get(moment.clip.id), moment.atMs)
+    seek(videos.get(moment.clip.id), moment)
   }
 
   /** The clips of the first few moments, best last so that it is the last to be given up. */
@@ -54,7 +55,7 @@ export function useMomentPlayer() {
     if (before && before.clip.id !== moment.clip.id) videos.get(before.clip.id)?.pause()
     await nextTick()
     const video = videos.get(moment.clip.id)
-    seek(video, moment.atMs)
+    seek(video, moment)
     // Refused where the browser wants a click on the player first; the frame is shown all the same.
     await video?.play().catch(() => {})
   }
@@ -73,9 +74,9 @@ export function useMomentPlayer() {
   return { slots, current, hold, ready, warm, play, toggle, close }
 }
 
-function seek(video: HTMLVideoElement | undefined, ms: number) {
+function seek(video: HTMLVideoElement | undefined, { atMs, clip }: MomentHit) {
   if (!video) return
-  const seconds = ms / 1000
+  const seconds = seekSeconds(frameFrom(atMs, clip.frameRate))
   if (Math.abs(video.currentTime - seconds) < 0.001) return
   if (video.readyState >= HTMLMediaElement.HAVE_METADATA) video.currentTime = seconds
   else video.addEventListener('loadedmetadata', () => video.currentTime = seconds, { once: true })

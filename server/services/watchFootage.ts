@@ -43,7 +43,7 @@ export async function publishedClips(executor: Executor, ids: string[]): Promise
   return rows.map(({ clip, date }) => ({
     id: clip.id, date, durationMs: clip.durationMs ?? 0,
     src: isPlayable(clip) ? `/media/clips/${clip.id}/video` : null,
-    width: clip.probe?.video?.width ?? 16, height: clip.probe?.video?.height ?? 9,
+    width: clip.probe?.video?.width ?? 16, height: clip.probe?.video?.height ?? 9, frameRate: clip.probe?.video?.frameRate ?? null,
     poster: clip.footage?.poster ? `/media/clips/${clip.id}/poster` : null,
     tracks: tracks.filter(track => track.clipId === clip.id).map(track => ({
       language: track.language, label: languageName(track.language), src: `/media/clips/${clip.id}/captions/${track.id}.vtt`,

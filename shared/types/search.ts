@@ -1,3 +1,4 @@
+import type { FrameRate } from './media'
 import type { Inking, Operation } from './trade'
 
 /** GET /api/search: moments, best first, gathered by step. */
@@ -44,7 +45,7 @@ export interface MomentGroup {
 
 export interface MomentHit {
   id: string
-  clip: { id: string, name: string, durationMs: number | null, src: string | null, width: number | null, height: number | null }
+  clip: { id: string, name: string, durationMs: number | null, src: string | null, width: number | null, height: number | null, frameRate: FrameRate | null }
   /** Null for people who may see published chapters only. */
   session: { id: string, title: string } | null
   date: string

@@ -1,3 +1,4 @@
+import type { FrameRate } from './media'
 import type { Picture } from './search'
 import type { Operation } from './trade'
 
@@ -66,6 +67,8 @@ export interface WatchClip {
   src: string | null
   width: number
   height: number
+  /** Null where the file does not say. */
+  frameRate: FrameRate | null
   poster: string | null
   tracks: { language: string, label: string, src: string }[]
 }

@@ -1,7 +1,7 @@
 import { computed, onBeforeUnmount, ref, shallowRef, watch } from 'vue'
 import type { ClipView } from '#shared/types/session'
 import { clipAt, nearestClip, placeClips, toClip, type PlacedClip } from '#shared/utils/ribband/clock'
-import { framesOn, lastMs, moved, placeAfter, placeBefore, seekSeconds, shuttleSpeed, type Place } from '#shared/utils/player/follow'
+import { frameFrom, framesOn, lastMs, moved, placeAfter, placeBefore, seekSeconds, shuttleSpeed, type Place } from '#shared/utils/player/follow'
 import { useVideos } from './useVideos'
 
 type Placed = PlacedClip<ClipView>
@@ -67,6 +67,11 @@ export function usePlayer(clips: () => ClipView[]) {
   function seekClip(id: string, ms: number): void {
     const clip = placed.value.find(one => one.id === id)
     if (clip) show({ clip, ms })
+  }
+
+  /** Goes to where something begins: its own first frame, not the one still on screen from before. */
+  function enter(id: string, ms: number): void {
+    seekClip(id, frameFrom(ms, placed.value.find(one => one.id === id)?.clip.video?.frameRate))
   }
 
   function setSpeed(wanted: number): void {
@@ -145,7 +150,7 @@ export function usePlayer(clips: () => ClipView[]) {
 
   return {
     placement, placed, active, clipId, clipMs, atMs, speed, rate, cameras, problem, videos,
-    seek, seekClip, play, pause, toggle, shuttle, setRate, nudge, frame, chooseCamera, nextCamera,
+    seek, seekClip, enter, play, pause, toggle, shuttle, setRate, nudge, frame, chooseCamera, nextCamera,
     clipAt: (sessionMs: number) => clipAt(placed.value, sessionMs, active.value?.lane ?? 0),
   }
 }

@@ -40,6 +40,8 @@ export interface RibbandEmits {
 
 /** Keys of the strip, for the page's list of keys. */
 export const RIBBAND_KEYS: readonly { keys: string, does: string }[] = [
+  { keys: 'Wheel', does: 'Over the ribband: zoom about the pointer (so do Ctrl wheel and two fingers apart or together). With nothing left to zoom the page scrolls' },
+  { keys: 'Shift wheel', does: 'Over the ribband: move along it (so do a wheel turned sideways and a finger along it)' },
   { keys: '+ −', does: 'Zoom the ribband in and out' },
   { keys: '0', does: 'Show the whole session' },
   { keys: 'Shift ← →', does: 'Move along the ribband' },

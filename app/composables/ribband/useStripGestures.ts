@@ -10,14 +10,18 @@ export interface GestureActions {
   press: (point: Point, event: PointerEvent) => Press
   hover: (point: Point | null) => void
   pan: (px: number) => boolean
-  zoom: (factor: number, x: number) => void
+  /** Pan and zoom answer whether anything moved. */
+  zoom: (factor: number, x: number) => boolean
 }
 
 const MOVED_PX = { mouse: 4, touch: 9 }
 const HOLD_MS = 450
 const COASTING_PX_PER_MS = 0.25
 
-/** Mouse, pen and fingers: one pans or takes hold, two pinch; the wheel pans, with Ctrl or ⌘ it zooms. */
+/** How far a turn of the wheel goes on for: a page that scrolls under the pointer keeps the wheel that long. */
+const TURN_MS = 250
+
+/** Mouse, pen and fingers: one pans or takes hold, two pinch; the wheel zooms, sideways or with Shift it pans. */
 export function useStripGestures(surface: Ref<HTMLElement | null>, actions: GestureActions) {
   const down = new Map<number, Point>()
   let press: Press | null = null
@@ -136,17 +140,29 @@ export function useStripGestures(surface: Ref<HTMLElement | null>, actions: Gest
     coasting = requestAnimationFrame(step)
   }
 
+  let pageTurnedAt = -Infinity
+  /** While the page is being scrolled the strip passes under the pointer: it must not take the wheel then. */
+  function onPageWheel(event: WheelEvent) {
+    if (!surface.value?.contains(event.target as Node)) pageTurnedAt = event.timeStamp
+  }
+
   function onWheel(event: WheelEvent) {
     const unit = event.deltaMode === 1 ? 16 : event.deltaMode === 2 ? 400 : 1
-    if (event.ctrlKey || event.metaKey) {
-      event.preventDefault()
-      const turned = Math.max(-120, Math.min(120, event.deltaY * unit))
-      actions.zoom(Math.exp(-turned / 160), point(event).x)
+    const pinched = event.ctrlKey || event.metaKey
+    // Left to the browser it would make the whole page larger.
+    if (pinched) event.preventDefault()
+    else if (event.timeStamp - pageTurnedAt < TURN_MS) {
+      pageTurnedAt = event.timeStamp
       return
     }
-    const along = event.shiftKey && event.deltaX === 0 ? event.deltaY : Math.abs(event.deltaX) > Math.abs(event.deltaY) ? event.deltaX : event.deltaY
-    // At either end, and while all is in sight, the wheel belongs to the page.
-    if (actions.pan(along * unit)) event.preventDefault()
+    const sideways = !pinched && (event.shiftKey || Math.abs(event.deltaX) > Math.abs(event.deltaY))
+    const turned = Math.max(-120, Math.min(120, event.deltaY * unit))
+    const moved = sideways
+      ? actions.pan((event.deltaX || event.deltaY) * unit)
+      : actions.zoom(Math.exp(-turned / (pinched ? 160 : 250)), point(event).x)
+    // At either end, and with nothing left to zoom, the wheel belongs to the page.
+    if (moved) event.preventDefault()
+    else pageTurnedAt = event.timeStamp
   }
 
   function onLeave(event: PointerEvent) {
@@ -161,9 +177,11 @@ export function useStripGestures(surface: Ref<HTMLElement | null>, actions: Gest
     element.addEventListener('pointercancel', onUp)
     element.addEventListener('pointerleave', onLeave)
     element.addEventListener('wheel', onWheel, { passive: false })
+    window.addEventListener('wheel', onPageWheel, { passive: true })
   })
   onBeforeUnmount(() => {
     clearTimeout(holdTimer)
     cancelAnimationFrame(coasting)
+    window.removeEventListener('wheel', onPageWheel)
   })
 }

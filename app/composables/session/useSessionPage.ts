@@ -66,7 +66,7 @@ export function useSessionPage(buildId: string, sessionId: string) {
     if (typeof clip !== 'string' || link === gone || !player.placed.value.some(one => one.id === clip)) return
     gone = link
     const ms = Math.round(Number(at ?? 0) * 1000)
-    player.seekClip(clip, Number.isFinite(ms) ? ms : 0)
+    player.enter(clip, Number.isFinite(ms) ? ms : 0)
   }
   // After mounting: the server draws the page at its beginning, and the first drawing in the browser must be the same.
   onMounted(() => watch(() => [route.query.clip, route.query.at, player.placed.value.length], goToLink, { immediate: true }))

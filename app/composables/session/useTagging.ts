@@ -109,7 +109,7 @@ export function useTagging({ player, edits, marks, buildId, say }: Input) {
     selectedId.value = id
     const chapter = selected.value
     if (!chapter) return
-    player.seekClip(chapter.clipId, chapter.startMs)
+    player.enter(chapter.clipId, chapter.startMs)
     say(`${edits.nameOf(chapter)}, ${chapter.inking}, ${lengthWords(chapter.endMs - chapter.startMs)}`)
   }
   function step(by: 1 | -1): void {

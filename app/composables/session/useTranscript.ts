@@ -1,7 +1,7 @@
 import { computed, nextTick, ref, shallowRef, watch, type Ref } from 'vue'
 import { defaultRangeExtractor, useVirtualizer } from '@tanstack/vue-virtual'
 import type { ChapterView } from '#shared/types/session'
-import { findRows, layTranscript, rowAt, type TranscriptRow } from '#shared/utils/transcript/rows'
+import { findRows, nextFound, layTranscript, rowAt, type TranscriptRow } from '#shared/utils/transcript/rows'
 import type { Player } from '../player/usePlayer'
 import type { Captions } from './useCaptions'
 
@@ -62,7 +62,10 @@ export function useTranscript({ player, captions, chapters, list, pinned }: Inpu
   const wanted = ref('')
   const found = computed(() => findRows(rows.value, wanted.value))
   const foundAt = ref(-1)
+  /** The picture has been put to the place that is shown, and not only the list. */
+  let wentThere = false
   watch(wanted, () => {
+    wentThere = false
     foundAt.value = found.value.length ? Math.max(0, found.value.findIndex(index => index >= current.value)) : -1
     if (foundAt.value >= 0) goTo(found.value[foundAt.value]!)
   })
@@ -70,15 +73,19 @@ export function useTranscript({ player, captions, chapters, list, pinned }: Inpu
     following.value = false
     reveal(index)
   }
+  /** The next place found, or the one before: the list and the picture go there. */
   function findNext(by: 1 | -1): void {
-    if (!found.value.length) return
-    foundAt.value = (foundAt.value + by + found.value.length) % found.value.length
-    goTo(found.value[foundAt.value]!)
+    const index = nextFound(found.value.length, foundAt.value, by, wentThere)
+    if (index === null) return
+    wentThere = true
+    foundAt.value = index
+    goTo(found.value[index]!)
+    seekTo(found.value[index]!)
   }
 
   function seekTo(index: number): void {
     const row = rows.value[index]
-    if (row) player.seekClip(row.cue.clipId, row.cue.startMs)
+    if (row) player.enter(row.cue.clipId, row.cue.startMs)
   }
 
   return { rows, current, following, virtual, items, height, wanted, found, foundAt, editing: shallowRef<string | null>(null), follow, scrolledByHand, reveal, findNext, seekTo }

@@ -1,4 +1,5 @@
 import { and, eq, inArray, sql } from 'drizzle-orm'
+import type { FrameRate } from '#shared/types/media'
 import type { MomentGroup, MomentHit } from '#shared/types/search'
 import { formatSeconds } from '#shared/utils/timecode'
 import { markWords } from '../../indexing/search/mark'
@@ -36,7 +37,7 @@ function toHit(question: Understanding, { candidate, score, atMs, line }: Ranked
   const at = formatSeconds(atMs)
   return {
     id: candidate.id,
-    clip: { id: clip.id, name: clip.name, durationMs: clip.durationMs, src: isPlayable(clip) ? `/media/clips/${clip.id}/video` : null, width: clip.video?.width ?? null, height: clip.video?.height ?? null },
+    clip: { id: clip.id, name: clip.name, durationMs: clip.durationMs, src: isPlayable(clip) ? `/media/clips/${clip.id}/video` : null, width: clip.video?.width ?? null, height: clip.video?.height ?? null, frameRate: clip.video?.frameRate ?? null },
     session: works ? { id: clip.sessionId, title: clip.title } : null,
     date: clip.date,
     chapter: chapter && { id: chapter.id, startMs: chapter.startMs, endMs: chapter.endMs, operation: chapter.operation, inking: chapter.inking, parts: chapter.partIds.flatMap(id => partNames.get(id) ?? []) },
@@ -53,7 +54,7 @@ async function readClips(executor: Executor, userId: string | null, ids: string[
   const rows = await executor.select({
     id: clips.id, name: clips.name, durationMs: clips.durationMs, proxyKey: clips.proxyKey, sessionId: clips.sessionId,
     probe: sql<ClipProbe>`jsonb_build_object('proxyReasons', coalesce(${clips.probe}->'proxyReasons', '["container"]'))`,
-    video: sql<{ width: number, height: number } | null>`${clips.probe}->'video'`,
+    video: sql<{ width: number, height: number, frameRate?: FrameRate } | null>`${clips.probe}->'video'`,
     ...pictureColumns,
     title: sessions.title, date: sessions.date, role: memberships.role,
     build: { id: builds.id, name: builds.name, address: builds.address },

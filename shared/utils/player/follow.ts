@@ -48,6 +48,19 @@ export function framesOn(ms: number, by: number, rate: { numerator: number, deno
   return frameToMs(Math.max(0, msToFrame(Math.max(0, Math.round(ms)), { num, den }) + by), { num, den })
 }
 
+/**
+ * The first millisecond of the first frame that begins at `ms` or after it. At `ms` itself the frame before may still
+ * be on screen, and where a scene begins that is the scene before. Without a rate `ms` itself.
+ */
+export function frameFrom(ms: number, rate: { numerator: number, denominator: number } | null | undefined): number {
+  const whole = Math.max(0, Math.round(ms))
+  if (!rate) return whole
+  const exact = { num: rate.numerator, den: rate.denominator }
+  const frame = msToFrame(whole, exact)
+  const begins = frameToMs(frame, exact)
+  return begins >= whole ? begins : frameToMs(frame + 1, exact)
+}
+
 /** Seconds to give a video element: the middle of the millisecond, so that rounding cannot fall into the frame before. */
 export function seekSeconds(ms: number): number {
   return (ms + 0.5) / 1000

@@ -60,6 +60,15 @@ export function findRows(rows: readonly TranscriptRow[], wanted: string): number
   return rows.filter(row => row.cue.text.toLocaleLowerCase('en').replace(/\s+/g, ' ').includes(words)).map(row => row.index)
 }
 
+/**
+ * Which of `count` places found comes next (1) or before (-1), round and round; null when there are none. On from a
+ * place that was only shown and not yet gone to is that place itself.
+ */
+export function nextFound(count: number, at: number, by: 1 | -1, wentThere: boolean): number | null {
+  if (count === 0) return null
+  return by === 1 && !wentThere ? Math.max(0, at) : (at + by + count) % count
+}
+
 /** Languages that captions are there in, most captions first; 'und' for unnamed. */
 export function languagesOf(tracks: readonly TrackView[]): string[] {
   const counts = new Map<string, number>()

@@ -124,6 +124,48 @@ describe('edges', () => {
   })
 })
 
+describe('the wheel', () => {
+  const WHOLE = '0:00 to 1:02:00 in sight'
+  async function wheelOn(wrapper: Awaited<ReturnType<typeof strip>>, turn: WheelEventInit, at = 10_000) {
+    const bar = wrapper.get('[role=scrollbar]')
+    const event = new WheelEvent('wheel', { bubbles: true, cancelable: true, ...turn })
+    // happy-dom's wheel knows neither place nor keys.
+    const known = { timeStamp: at, clientX: 500, clientY: 50, ctrlKey: turn.ctrlKey ?? false, shiftKey: turn.shiftKey ?? false, metaKey: false }
+    for (const [name, value] of Object.entries(known)) Object.defineProperty(event, name, { value })
+    wrapper.get(`#${CSS.escape(bar.attributes('aria-controls')!)}`).element.dispatchEvent(event)
+    await nextTick()
+    return { taken: event.defaultPrevented, sight: bar.attributes('aria-valuetext')! }
+  }
+
+  it('zooms, and is the page’s again once there is nothing left to zoom', async () => {
+    const wrapper = await strip()
+    expect(await wheelOn(wrapper, { deltaY: 100 }, 1000)).toEqual({ taken: false, sight: WHOLE })
+    const near = await wheelOn(wrapper, { deltaY: -100 })
+    expect(near.taken).toBe(true)
+    expect(near.sight).not.toBe(WHOLE)
+    expect(await wheelOn(wrapper, { deltaY: 400 })).toEqual({ taken: true, sight: WHOLE })
+    expect((await wheelOn(wrapper, { deltaY: 100 })).taken).toBe(false)
+    expect((await wheelOn(wrapper, { deltaY: 100, ctrlKey: true })).taken).toBe(true)
+  })
+
+  it('moves along when it is turned sideways or Shift is held', async () => {
+    const wrapper = await strip()
+    const near = await wheelOn(wrapper, { deltaY: -100 })
+    const along = await wheelOn(wrapper, { deltaX: 50, deltaY: 3 })
+    expect(along.sight).not.toBe(near.sight)
+    expect(await wheelOn(wrapper, { deltaY: -50, shiftKey: true })).toEqual({ taken: true, sight: near.sight })
+  })
+
+  it('is not taken from a page that is being scrolled', async () => {
+    const wrapper = await strip()
+    const onPage = new WheelEvent('wheel', { bubbles: true, deltaY: 100 })
+    Object.defineProperty(onPage, 'timeStamp', { value: 5000 })
+    document.body.dispatchEvent(onPage)
+    expect(await wheelOn(wrapper, { deltaY: -100 }, 5100)).toEqual({ taken: false, sight: WHOLE })
+    expect((await wheelOn(wrapper, { deltaY: -100 }, 6000)).taken).toBe(true)
+  })
+})
+
 describe('the part in sight', () => {
   it('is a scrollbar that says its times; keys zoom and move it', async () => {
     const wrapper = await strip()

@@ -1,9 +1,9 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { placeClips } from '#shared/utils/ribband/clock'
-import { framesOn, lastMs, moved, placeAfter, placeBefore, seekSeconds, shuttleSpeed } from '#shared/utils/player/follow'
+import { frameFrom, framesOn, lastMs, moved, placeAfter, placeBefore, seekSeconds, shuttleSpeed } from '#shared/utils/player/follow'
 import { whyNotPlayable } from '#shared/utils/player/reasons'
-import { msToFrame } from '#shared/utils/timecode'
+import { frameToMs, msToFrame } from '#shared/utils/timecode'
 
 const clip = (id: string, offsetMs: number, durationMs: number, more: { camera?: string, src?: string | null } = {}) => ({ id, offsetMs, durationMs, camera: '', src: '/v', ...more })
 const place = (...clips: ReturnType<typeof clip>[]) => placeClips(clips).clips
@@ -60,6 +60,21 @@ describe('stepping', () => {
       expect(msToFrame(framesOn(next, -1, rate), exact)).toBe(frame)
     }))
     expect(framesOn(0, -1, rate)).toBe(0)
+  })
+  it('begins with the first frame that begins at the time or after it', () => {
+    const ten = { numerator: 10, denominator: 1 }
+    expect([0, 1, 99, 100, 101, 12_345].map(ms => frameFrom(ms, ten))).toEqual([0, 100, 100, 100, 200, 12_400])
+    expect(frameFrom(12_345, null)).toBe(12_345)
+    const rate = { numerator: 30_000, denominator: 1001 }
+    const exact = { num: 30_000, den: 1001 }
+    fc.assert(fc.property(fc.nat(36_000_000), (ms) => {
+      const from = frameFrom(ms, rate)
+      expect(from).toBeGreaterThanOrEqual(ms)
+      expect(from - ms).toBeLessThan(34)
+      // It is where its frame begins, and going there again stays there.
+      expect(frameToMs(msToFrame(from, exact), exact)).toBe(from)
+      expect(frameFrom(from, rate)).toBe(from)
+    }))
   })
   it('seeks within the millisecond, so never to the frame before', () => {
     expect(seekSeconds(40)).toBe(0.0405)

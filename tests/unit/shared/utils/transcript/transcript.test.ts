@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import type { ChapterView, CueView, TrackView } from '#shared/types/session'
 import { placeClips } from '#shared/utils/ribband/clock'
-import { cuesIn, findRows, languagesOf, layTranscript, rowAt } from '#shared/utils/transcript/rows'
+import { cuesIn, findRows, languagesOf, layTranscript, nextFound, rowAt } from '#shared/utils/transcript/rows'
 import { spokenRange } from '#shared/utils/transcript/selection'
 
 const clips = placeClips([
@@ -29,6 +29,12 @@ describe('rows', () => {
     expect(findRows(rows, 'EPOXY')).toEqual([1, 2])
     expect(findRows(rows, 'the epoxy')).toEqual([1, 2])
     expect(findRows(rows, ' ')).toEqual([])
+  })
+  it('are gone to in turn: first the one shown, then round and round, either way', () => {
+    expect(nextFound(3, 1, 1, false)).toBe(1)
+    expect([nextFound(3, 1, 1, true), nextFound(3, 2, 1, true)]).toEqual([2, 0])
+    expect([nextFound(3, 1, -1, false), nextFound(3, 0, -1, true)]).toEqual([0, 2])
+    expect(nextFound(0, -1, 1, false)).toBeNull()
   })
 })
 
