@@ -6,27 +6,46 @@ import type { Executor } from '../database/client'
 import { type Build, builds, memberships, parts, stepParts, steps, users } from '../database/schema'
 import { examplesFor } from './search/instead'
 import { maySeeBuild } from './access'
-import { publishedChapters, type PublishedChapter, publishedClips, publishedLines } from './watchFootage'
+import { pictureColumns, type PictureSource } from './search/picture'
+import { pictureOf, publishedChapters, type PublishedChapter, publishedClips, publishedLines, publishedSql } from './watchFootage'
 
 /**
  * The public face of builds. Everything here shows inked chapters only, the clips under them and the captions
  * within them, whoever asks: a builder sees what the world would see.
  */
 
-/** Public builds, the fullest first. Unlisted ones are reached by their link alone. */
+/** Builds on one page of the list. */
+const MOST_LISTED = 200
+
+/**
+ * Public builds that show something, the fullest first, in one query. Unlisted ones are reached by their link alone.
+ * The picture is that of the longest stretch of work that has one.
+ */
 export async function watchList(executor: Executor, siteUrl: string): Promise<WatchList> {
-  const rows = await executor.select().from(builds).where(eq(builds.visibility, 'public')).orderBy(asc(builds.name)).limit(200)
-  const list: WatchListed[] = []
-  for (const build of rows) {
-    const chapters = await publishedChapters(executor, build.id)
-    const [{ count }] = (await executor.select({ count: sql<number>`count(*)::int` }).from(steps).where(and(eq(steps.buildId, build.id), isNull(steps.archivedAt)))) as [{ count: number }]
-    list.push({
-      address: build.address, name: build.name, boat: build.boat, about: build.about, steps: count,
-      stepsShown: new Set(chapters.flatMap(chapter => chapter.step?.number ?? [])).size, shownMs: shownMs(chapters), picture: longest(chapters)?.picture ?? null,
-    })
+  const work = sql`${publishedSql} and c.operation <> 'none'`
+  const { rows } = await executor.execute<ListedRow>(sql`
+    select b.address, b.name, b.boat, b.about, shown.ms as "shownMs", shown.steps as "stepsShown",
+      (select count(*)::int from steps s where s.build_id = b.id and s.archived_at is null) as steps,
+      best.clip_id as "clipId", best.start_ms as "startMs", best.end_ms as "endMs", best.poster, best.sheets
+    from builds b
+    join lateral (
+      select sum(c.end_ms - c.start_ms)::float8 as ms, count(distinct s.id)::int as steps
+      from chapters c join clips on clips.id = c.clip_id left join steps s on s.id = c.step_id and s.archived_at is null
+      where c.build_id = b.id and ${work}
+    ) shown on shown.ms > 0
+    join lateral (
+      select c.clip_id, c.start_ms, c.end_ms, ${pictureColumns.poster} as poster, ${pictureColumns.sheets} as sheets
+      from chapters c join clips on clips.id = c.clip_id where c.build_id = b.id and ${work}
+      order by (clips.footage is null), c.end_ms - c.start_ms desc, c.id limit 1
+    ) best on true
+    where b.visibility = 'public'
+    order by shown.ms desc, b.name limit ${MOST_LISTED}`)
+  return {
+    builds: rows.map(({ clipId, startMs, endMs, poster, sheets, ...build }) => ({ ...build, picture: pictureOf(clipId, { startMs, endMs }, { poster, sheets }) })),
+    canonical: `${siteUrl}/watch`,
   }
-  return { builds: list.sort((a, b) => b.shownMs - a.shownMs || a.name.localeCompare(b.name)), canonical: `${siteUrl}/watch` }
 }
+interface ListedRow extends Omit<WatchListed, 'picture'>, PictureSource, Record<string, unknown> { clipId: string, startMs: number, endMs: number }
 
 export async function watchBuild(executor: Executor, userId: string | null, address: string, siteUrl: string): Promise<WatchBuild> {
   const { build, head } = await requireWatched(executor, userId, address, siteUrl, '')

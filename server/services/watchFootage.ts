@@ -3,7 +3,7 @@ import type { WatchChapter, WatchClip, WatchMoment } from '#shared/types/watch'
 import type { Executor } from '../database/client'
 import { captionTracks, chapterParts, chapters, clips, cues, parts, sessions, steps } from '../database/schema'
 import { isPlayable } from './clipView'
-import { pictureAt, pictureColumns } from './search/picture'
+import { pictureAt, pictureColumns, type PictureSource } from './search/picture'
 
 export interface PublishedChapter extends WatchChapter { hasPoster: boolean }
 
@@ -12,6 +12,14 @@ const SETTLED_MS = 4_000
 
 /** The one place that says what is published: inked chapters of clips that are whole. */
 const published = and(eq(chapters.inking, 'inked'), eq(clips.state, 'ready'))
+
+/** The same of tables `chapters c` and `clips`. */
+export const publishedSql = sql`c.inking = 'inked' and clips.state = 'ready'`
+
+/** The picture of a chapter. */
+export function pictureOf(clipId: string, { startMs, endMs }: { startMs: number, endMs: number }, source: PictureSource) {
+  return pictureAt(clipId, source, Math.min(startMs + SETTLED_MS, (startMs + endMs) / 2))
+}
 
 /** A build's published chapters by plan order, then as they were filmed; of one clip, by time. */
 export async function publishedChapters(executor: Executor, buildId: string, clipId?: string): Promise<PublishedChapter[]> {
@@ -28,7 +36,7 @@ export async function publishedChapters(executor: Executor, buildId: string, cli
   return rows.map(({ number, title, poster, sheets, ...row }) => ({
     ...row,
     step: number !== null && title !== null ? { number, title } : null,
-    picture: pictureAt(row.clipId, { poster, sheets }, Math.min(row.startMs + SETTLED_MS, (row.startMs + row.endMs) / 2)),
+    picture: pictureOf(row.clipId, row, { poster, sheets }),
     hasPoster: poster !== null,
   }))
 }

@@ -1,6 +1,6 @@
 import type { H3Event } from 'h3'
 import { z } from 'zod'
-import { DomainError } from '#shared/utils/errors'
+import { DomainError, notFound } from '#shared/utils/errors'
 
 /** Checks a value against a schema; what is wrong comes back as field issues that a form can show. */
 export function validate<Schema extends z.ZodType>(schema: Schema, value: unknown): z.output<Schema> {
@@ -33,6 +33,6 @@ export function readQueryAs<Schema extends z.ZodType>(event: H3Event, schema: Sc
 /** An id in the address. One that is not an id cannot name anything: the same 404 as for a missing row. */
 export function routeId(event: H3Event, name: string): string {
   const value = getRouterParam(event, name)
-  if (!z.uuid().safeParse(value).success) throw new DomainError('not-found', `That ${name} was not found. It may have been removed, or you may need to sign in.`)
+  if (!z.uuid().safeParse(value).success) throw notFound(`That ${name}`)
   return value!.toLowerCase()
 }

@@ -32,5 +32,5 @@ export class DomainError extends Error {
 
 /** Answers for what may not be seen the same as for what is not there. */
 export function notFound(what: string): DomainError {
-  return new DomainError('not-found', `${what} was not found. It may have been removed, or you may need to sign in.`)
+  return new DomainError('not-found', `${what} was not found. It may have been removed, or it is not shared with you.`)
 }

@@ -93,6 +93,18 @@ for (const size of SIZES) {
   }
 }
 
+test('a builder sees the picture and all the planks at once, on low windows too', async ({ page, context }) => {
+  await context.addCookies(people.builder.cookies)
+  for (const size of [{ width: 1440, height: 900 }, { width: 1280, height: 720 }]) {
+    await page.setViewportSize(size)
+    await page.goto(`/builds/${at.build}/sessions/${at.session}`)
+    await hydrated(page)
+    await expect(page.locator('video[data-shown=true]')).toBeInViewport({ ratio: 1 })
+    await expect(page.locator('[role=option]').first()).toBeInViewport({ ratio: 0.99 })
+    expect(await page.locator('video[data-shown=true]').evaluate(video => video.getBoundingClientRect().height)).toBeGreaterThan(150)
+  }
+})
+
 test('what is not there says so, and so does what one may not see', async ({ page, visit }) => {
   const stranger = await newPerson('Una Passerby')
   const theirs = await visit(stranger)
@@ -102,6 +114,9 @@ test('what is not there says so, and so does what one may not see', async ({ pag
     expect(response!.status(), path).toBe(404)
     await expect(on.getByRole('heading', { level: 1 })).toHaveText('Not on this sheet')
     await hydrated(on)
+    // Who has signed in already is not sent to do so.
+    await expect(on.getByRole('main').getByRole('button', { name: 'Sign in' })).toHaveCount(on === theirs ? 0 : 1)
+    await expect(on.getByRole('main').getByRole('button', { name: 'My builds' })).toHaveCount(on === theirs ? 1 : 0)
     await expectAccessible(on)
   }
   await page.getByRole('button', { name: 'To the start page' }).click()

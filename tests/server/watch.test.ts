@@ -1,5 +1,5 @@
-import { eq } from 'drizzle-orm'
-import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest'
+import { eq, inArray } from 'drizzle-orm'
+import { afterAll, beforeAll, beforeEach, describe, expect, it, vi } from 'vitest'
 import { type Build, builds, chapters, type Clip, clips, type User } from '#server/database/schema'
 import { listedPages, watchBuild, watchList, watchMoment, watchStep } from '#server/services/watch'
 import type { ProbeResult } from '#shared/types/media'
@@ -78,6 +78,29 @@ describe('what is published', () => {
     await database.database.update(clips).set({ probe: { ...probe, proxyReasons: ['video-codec'] } }).where(eq(clips.id, shown.id))
     expect((await watchMoment(database.database, null, build.address, shown.id, SITE)).clip.src).toBeNull()
     await database.database.update(clips).set({ probe }).where(eq(clips.id, shown.id))
+  })
+})
+
+describe('the list of builds', () => {
+  it('leaves out public builds that show no work, and is read in one query however many there are', async () => {
+    const db = database.database
+    const mine = await makeUser(db)
+    const planned = await makeBuild(db, { name: 'Only planned', visibility: 'public' }, { builder: mine })
+    const talk = await makeBuild(db, { name: 'Only talk', visibility: 'public' }, { builder: mine })
+    await makeChapter(db, await makeClip(db, await makeSession(db, talk)), { operation: 'none' })
+    const long = await makeBuild(db, { name: 'Longer', visibility: 'public' }, { builder: mine })
+    const step = await makeStep(db, long)
+    const [plain, pictured] = [await makeClip(db, await makeSession(db, long)), await makeClip(db, await makeSession(db, long), { probe, footage: { ...shown.footage!, sheets: null } })]
+    for (const clip of [plain, pictured]) await makeChapter(db, clip, { stepId: step.id, endMs: clip === plain ? 90_000 : 30_000 })
+    const asked = vi.spyOn(database.pool, 'query')
+    const { builds: list } = await watchList(db, SITE)
+    expect(asked).toHaveBeenCalledTimes(1)
+    asked.mockRestore()
+    expect(list).toEqual([
+      { address: long.address, name: 'Longer', boat: long.boat, about: long.about, steps: 1, stepsShown: 1, shownMs: 120_000, picture: { kind: 'poster', url: `/media/clips/${pictured.id}/poster`, width: 1280, height: 720 } },
+      expect.objectContaining({ address: build.address, steps: 2, stepsShown: 1, shownMs: 8000, picture: (await watchBuild(db, null, build.address, SITE)).picture }),
+    ])
+    await db.delete(builds).where(inArray(builds.id, [planned.id, talk.id, long.id]))
   })
 })
 

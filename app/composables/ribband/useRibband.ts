@@ -3,7 +3,7 @@ import { frameToMs } from '#shared/utils/time/frames'
 import { formatClock } from '#shared/utils/time/clock'
 import { clipAt, nearestClip } from '#shared/utils/ribband/clock'
 import { toLine } from '#shared/utils/ribband/line'
-import { layoutStrip } from '#shared/utils/ribband/layout'
+import { layoutStrip, type StripSize } from '#shared/utils/ribband/layout'
 import { toX } from '#shared/utils/ribband/scale'
 import type { ClipView } from '#shared/types/session'
 import { OPERATION_WORDS } from '#shared/utils/operations'
@@ -29,7 +29,7 @@ function followed(clip: ClipView): ClipView {
 export type Ribband = ReturnType<typeof useRibband>
 
 /** The session laid on the line, the part in sight, and what is done with it; nothing of the page's elements. */
-export function useRibband(props: RibbandProps, size: { width: Ref<number>, narrow: Ref<boolean> }, sends: Sends) {
+export function useRibband(props: RibbandProps, size: { width: Ref<number>, kind: Ref<StripSize> }, sends: Sends) {
   const footage = computed(() => {
     // Thousands of captions are read raw: following each through a proxy would cost more than laying them.
     void props.cues.length
@@ -48,7 +48,7 @@ export function useRibband(props: RibbandProps, size: { width: Ref<number>, narr
   })
 
   const preferredLane = computed(() => (props.focusedClipId && footage.value.byId.get(props.focusedClipId)?.lane) || 0)
-  const layout = computed(() => layoutStrip(footage.value.lanes.length, size.width.value, size.narrow.value))
+  const layout = computed(() => layoutStrip(footage.value.lanes.length, size.width.value, size.kind.value))
   const actions = useStripActions({
     strip: () => strip.value, layout: () => layout.value, view: () => view.view.value, edges,
     preferredLane: () => preferredLane.value, selection: () => props.selection ?? null, readOnly: () => props.readOnly === true, mayChange: chapter => props.mayChange?.(chapter) ?? true,

@@ -28,6 +28,11 @@ export function forgiven(word: string): number {
   return word.length <= 3 ? 0 : word.length <= 7 ? 1 : 2
 }
 
+/** Slips that leave a word still like another, for suggestions that a person chooses from: one in every three letters. */
+export function alike(word: string): number {
+  return Math.min(3, Math.floor(word.length / 3))
+}
+
 export interface SpelledWord { word: string, /** How often it is said. */ count: number }
 
 /**

@@ -1,7 +1,7 @@
 import { sql } from 'drizzle-orm'
 import type { SearchInstead } from '#shared/types/search'
 import { OPERATION_WORDS } from '#shared/utils/operations'
-import { nearest } from '../../indexing/search/spelling'
+import { alike, nearest } from '../../indexing/search/spelling'
 import type { Frequencies } from '../../indexing/search/rank'
 import type { SearchPlan, Understanding } from '../../indexing/search/types'
 import { stemOf } from '../../indexing/words/tokenise'
@@ -19,7 +19,7 @@ export async function insteadOf(executor: Executor, asked: { question: Understan
   for (const typed of question.rest.slice(0, MOST)) {
     const lookalikes = await readLookalikes(executor, stemOf(typed), filters.buildId)
     const planWords = plan.parts.map(part => ({ word: part.name, count: 1 }))
-    const words = nearest(typed, [...lookalikes, ...planWords], 3).slice(0, MOST).map(entry => entry.word)
+    const words = nearest(typed, [...lookalikes, ...planWords], alike(typed)).slice(0, MOST).map(entry => entry.word)
     if (words.length) near.push({ typed, words })
   }
   const narrowed: [SearchInstead['drop'][number], Filters][] = [

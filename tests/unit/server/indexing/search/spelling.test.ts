@@ -1,6 +1,6 @@
 import fc from 'fast-check'
 import { expect, it } from 'vitest'
-import { forgiven, nearest, slips } from '#server/indexing/search/spelling'
+import { alike, forgiven, nearest, slips } from '#server/indexing/search/spelling'
 
 it('counts letters left out, put in, changed and swapped', () => {
   expect(slips('transom', 'transom', 2)).toBe(0)
@@ -24,4 +24,14 @@ it('reads what is likeliest meant', () => {
   expect(nearest('transon', vocabulary).map(entry => entry.word)).toEqual(['transom'])
   expect(nearest('reach', vocabulary)).toEqual([])
   expect(forgiven('log')).toBe(0)
+})
+
+it('suggests only what is truly alike', () => {
+  const vocabulary = ['flare', 'fillet', 'gunwale', 'varnish', 'glue'].map(word => ({ word, count: 5 }))
+  const suggested = (typed: string) => nearest(typed, vocabulary, alike(typed)).map(entry => entry.word)
+  for (const nonsense of ['flurb', 'frobx', 'fnord', 'flibbert', 'vorpal', 'gimble', 'gyre', 'x']) expect(suggested(nonsense), nonsense).toEqual([])
+  expect(suggested('gunwhal')).toEqual(['gunwale'])
+  expect(suggested('filit')).toEqual([])
+  expect(suggested('filliet')).toEqual(['fillet'])
+  expect(suggested('glu')).toEqual(['glue'])
 })

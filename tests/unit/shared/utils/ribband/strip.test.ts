@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import type { ChapterView, ClipView, CueView } from '#shared/types/session'
-import { layoutStrip, zoneAt } from '#shared/utils/ribband/layout'
+import { layoutStrip, planksFoot, zoneAt } from '#shared/utils/ribband/layout'
 import { fitLabels, labelX, thinMarks } from '#shared/utils/ribband/marks'
 import { cueAt, layChapters, layFootage, plankAt } from '#shared/utils/ribband/strip'
 
@@ -69,13 +69,22 @@ describe('marks and labels', () => {
 
 describe('the layout', () => {
   it('depends on bands and narrowness alone, and has fingertip-high planks when narrow', () => {
-    expect(layoutStrip(2, 0, false)).toEqual({ ...layoutStrip(2, 1300, false), width: 0 })
-    expect(layoutStrip(1, 390, true).lanes[0]!.planks.height).toBeGreaterThanOrEqual(44)
-    expect(layoutStrip(0, 0, false).height).toBe(layoutStrip(1, 0, false).height)
+    expect(layoutStrip(2, 0, 'wide')).toEqual({ ...layoutStrip(2, 1300, 'wide'), width: 0 })
+    expect(layoutStrip(1, 390, 'narrow').lanes[0]!.planks.height).toBeGreaterThanOrEqual(44)
+    expect(layoutStrip(1, 0, 'low').height).toBeLessThan(layoutStrip(1, 0, 'wide').height)
+    expect(layoutStrip(0, 0, 'wide').height).toBe(layoutStrip(1, 0, 'wide').height)
+  })
+
+  it('leaves room on a low window for a picture over the planks', () => {
+    // Heads of site, build and sheet, transport and buttons come to less than 280 px.
+    expect(720 - 280 - planksFoot(1, 'low')).toBeGreaterThan(190)
+    expect(900 - 280 - planksFoot(1, 'wide')).toBeGreaterThan(340)
+    expect(planksFoot(5, 'wide')).toBeLessThanOrEqual(planksFoot(2, 'wide'))
+    expect(planksFoot(0, 'low')).toBe(planksFoot(1, 'low'))
   })
 
   it('knows what lies where', () => {
-    const layout = layoutStrip(2, 1000, false)
+    const layout = layoutStrip(2, 1000, 'wide')
     const second = layout.lanes[1]!
     expect(zoneAt(layout, 20)).toEqual({ zone: 'sheer', lane: 0 })
     expect(zoneAt(layout, layout.lanes[0]!.planks.top + 5)).toEqual({ zone: 'planks', lane: 0 })
