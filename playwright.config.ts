@@ -2,11 +2,12 @@ import { defineConfig } from '@playwright/test'
 import { CHROMIUM } from './tests/support/chromium'
 
 /**
- * Debian's Chromium, never a downloaded one. One worker: the machine that CI has is small, and the tests share one
- * running product (tests/support/product.ts starts it before the first test).
+ * Debian's Chromium, never a downloaded one. The tests share one running product (tests/support/startProduct.ts starts
+ * it before the first test).
  */
 export default defineConfig({
   testDir: 'tests/e2e',
+  testIgnore: /faults\//,
   outputDir: 'test-results',
   fullyParallel: false,
   workers: 1,
@@ -15,11 +16,9 @@ export default defineConfig({
   globalSetup: './tests/support/startProduct.ts',
   use: {
     viewport: { width: 1440, height: 900 },
-    trace: 'retain-on-failure',
+    // Recording every test costs a tenth of the whole: what a failed test showed is in test-results without it.
+    trace: process.env.RIBBAND_TRACE ? 'retain-on-failure' : 'off',
+    screenshot: 'only-on-failure',
     launchOptions: CHROMIUM,
   },
-  projects: [
-    { name: 'browser', testIgnore: /faults\//, testMatch: /.*\.spec\.ts/ },
-    { name: 'faults', testMatch: /faults\/.*\.spec\.ts/ },
-  ],
 })
