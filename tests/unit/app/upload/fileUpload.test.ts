@@ -32,6 +32,28 @@ describe('one file', () => {
     expect(world.stored.size).toBe(40)
   })
 
+  it('sums each part while it is being sent', async () => {
+    const { world, upload } = make(PART)
+    let put = () => {}
+    const begunPut = new Promise<void>(resolve => put = resolve)
+    // Were one to wait for the other, this would never end.
+    world.beforeHash = () => begunPut
+    world.beforePut = () => put()
+    await upload.run()
+    expect(upload.progress.state).toBe('done')
+  })
+
+  it('that can no longer be read stops, though its part is on its way', async () => {
+    const { world, upload } = make(PART)
+    world.beforeHash = () => {
+      throw new DOMException('gone', 'NotReadableError')
+    }
+    world.beforePut = (_part, signal) => new Promise((_resolve, reject) => signal.addEventListener('abort', () => reject(signal.reason)))
+    await upload.run()
+    expect(upload.progress).toMatchObject({ state: 'failed', message: expect.stringContaining('cannot be read any more') as string })
+    expect(world.stored.size).toBe(0)
+  })
+
   it('sends only what the storage has not', async () => {
     const { world, upload } = make()
     for (const part of [1, 2, 4]) world.stored.set(part, `etag-${part}`)

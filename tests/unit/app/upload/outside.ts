@@ -29,6 +29,8 @@ export function makeOutside(size: number) {
     puts: 0,
     /** Called before every PUT; may throw. */
     beforePut: (_part: number, _signal: AbortSignal): Promise<void> | void => {},
+    /** Called before every sum; may throw. */
+    beforeHash: (_piece: unknown): Promise<void> | void => {},
     complete: (_clipId: string, _parts: { partNumber: number }[]): unknown => ({}),
     begin: null as null | UploadOutside['begin'],
   }
@@ -63,7 +65,10 @@ export function makeOutside(size: number) {
       return world.complete(clipId, parts)
     },
     fingerprint: async () => sha256('fingerprint'),
-    hash: async piece => sha256(JSON.stringify(piece)),
+    hash: async (piece) => {
+      await world.beforeHash(piece)
+      return sha256(JSON.stringify(piece))
+    },
     combine: async hashes => sha256(hashes.join()),
     online: () => world.online,
     whenOnline: async () => {
