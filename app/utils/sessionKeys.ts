@@ -48,7 +48,7 @@ export const SESSION_KEYS: readonly SessionKey[] = [
   { action: 'undo', group: 'Chapters', does: 'Undo', keys: 'Ctrl or ⌘ Z', match: { key: ['z'], command: true } },
   { action: 'redo', group: 'Chapters', does: 'Redo', keys: 'Ctrl or ⌘ Shift Z', match: { key: ['z'], command: true, shift: true } },
   { action: 'redo', group: 'Chapters', does: '', keys: '', match: { key: ['y'], command: true } },
-  { action: 'find', group: 'This page', does: 'Find words in the transcript', keys: '/', match: { key: ['/'] } },
+  { action: 'find', group: 'This page', does: 'Find words in the transcript; there Enter goes to the next place, with Shift to the one before', keys: '/', match: { key: ['/'] } },
   { action: 'follow', group: 'This page', does: 'Let the transcript follow the playback', keys: 'F', match: { key: ['f'] } },
   { action: 'keys', group: 'This page', does: 'This list', keys: '?', match: { key: ['?'] } },
 ]

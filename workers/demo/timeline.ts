@@ -20,12 +20,14 @@ export interface Timeline {
 const LEAD_IN_MS = 700
 const BREATH_MS = 420
 const BEAT_GAP_MS = 900
+/** The picture changes so long before the first word over it. */
+const SHOT_LEAD_MS = 200
 const CUE_CHARACTERS = 76
 
 /**
  * Lays a spoken clip out in time.
  * `spokenMs` holds the measured length of each sentence in order, beats joined.
- * Chapters meet in the pause between two beats, so no word is cut.
+ * Chapters meet in the pause between two beats, so no word is cut, and where the next beat's picture begins.
  */
 export function layOut(clip: SpokenClip, spokenMs: number[]): Timeline {
   const timeline: Timeline = { durationMs: 0, lines: [], cues: [], chapters: [], shots: [], sounds: [] }
@@ -40,7 +42,7 @@ export function layOut(clip: SpokenClip, spokenMs: number[]): Timeline {
       const pause = line.pauseMs ?? 0
       timeline.lines.push({ startMs: now, endMs: end, line })
       timeline.cues.push(...cuesOf(line.text, now, end))
-      if (line.shot) startShot(timeline.shots, line.shot, timeline.shots.length ? now - 200 : 0)
+      if (line.shot) startShot(timeline.shots, line.shot, timeline.shots.length ? now - SHOT_LEAD_MS : 0)
       if (line.sound) {
         timeline.sounds.push(pause > 500
           ? { startMs: end + 250, endMs: end + pause, sound: line.sound, under: false }
@@ -49,7 +51,7 @@ export function layOut(clip: SpokenClip, spokenMs: number[]): Timeline {
       now = end + pause + BREATH_MS
     }
     const last = index === clip.beats.length - 1
-    const beatEnd = last ? now : now + Math.round(BEAT_GAP_MS / 2)
+    const beatEnd = last ? now : now + BEAT_GAP_MS - SHOT_LEAD_MS
     if (beat.chapter) timeline.chapters.push({ ...beat.chapter, startMs: beatStart, endMs: beatEnd })
     beatStart = beatEnd
     if (!last) now += BEAT_GAP_MS

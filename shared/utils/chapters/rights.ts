@@ -22,6 +22,6 @@ export function forbiddenIn(edit: { put: readonly { id: string }[], remove: read
 /** Why such a chapter stays as it is, for people. */
 export function forbiddenWords(chapter: Pick<ChapterView, 'inkedBy'>): string {
   return chapter.inkedBy
-    ? `${chapter.inkedBy.name} has inked this chapter: only ${chapter.inkedBy.name} or the builder can change it.`
+    ? `${chapter.inkedBy.name} has inked this chapter. Crew change what is pencilled and what they inked themselves.`
     : 'This chapter is inked: only the builder can change it.'
 }

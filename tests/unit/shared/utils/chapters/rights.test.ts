@@ -25,6 +25,6 @@ it('finds what an edit would change against the rule, and says whose it is', () 
   const edit = { put: [{ id: 'own' }, { id: 'new' }, { id: 'theirs' }], remove: [{ id: 'pencilled' }] }
   const found = forbiddenIn(edit, [own, theirs, pencilled, nobodys], { id: 'me', role: 'crew' })
   expect(found).toEqual([theirs])
-  expect(forbiddenWords(theirs)).toContain('only Maud or the builder')
+  expect(forbiddenWords(theirs)).toContain('Maud has inked this chapter')
   expect(forbiddenWords(nobodys)).toContain('only the builder')
 })
