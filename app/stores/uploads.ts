@@ -1,13 +1,22 @@
 import { defineStore } from 'pinia'
 import { browserOutside } from '~/utils/upload/browserOutside'
 import { FileUpload } from '~/utils/upload/fileUpload'
+import { type Footage, followFates } from '~/utils/upload/fates'
 import { type Interrupted, readInterrupted, writeInterrupted } from '~/utils/upload/interrupted'
 import { sortPicked } from '~/utils/upload/picking'
 import { Slots } from '~/utils/upload/slots'
 import type { UploadProgress, UploadState } from '~/utils/upload/types'
 
 export interface UploadPlace { sessionId: string, buildId: string }
-export interface UploadEntry extends UploadPlace, UploadProgress { id: number, name: string, sizeBytes: number, kind: 'clip' | 'captions' }
+export interface UploadEntry extends UploadPlace, UploadProgress {
+  id: number
+  name: string
+  sizeBytes: number
+  kind: 'clip' | 'captions'
+  trackId: string | null
+  /** Why the file is of no use though all of it arrived; empty until that is known, or when it is fine. */
+  broken: string
+}
 
 /** Two files side by side hide the waits of beginning and ending; more would only share the same line. */
 const FILES_AT_ONCE = 2
@@ -24,6 +33,11 @@ export const useUploads = defineStore('uploads', () => {
   const running = new Map<number, FileUpload>()
   const slots = { files: new Slots(FILES_AT_ONCE), parts: new Slots(PARTS_AT_ONCE) }
   let lastId = 0
+  const fates = followFates({
+    entry: id => entries.value.find(one => one.id === id),
+    look: sessionId => api<Footage>(`/api/sessions/${sessionId}`),
+    tell: (id, broken) => change(id, { broken }),
+  })
 
   const unfinished = computed(() => entries.value.filter(entry => !OVER.has(entry.state)))
   const active = computed(() => unfinished.value.filter(entry => !['paused', 'failed'].includes(entry.state)))
@@ -48,7 +62,10 @@ export const useUploads = defineStore('uploads', () => {
     if (same && active.value.includes(same)) return
     if (same) remove(same.id)
     const entry = newEntry(file, place, 'clip')
-    const upload = new FileUpload(file, browserOutside(api, place.sessionId), slots, progress => change(entry.id, progress))
+    const upload = new FileUpload(file, browserOutside(api, place.sessionId), slots, (progress) => {
+      change(entry.id, progress)
+      if (progress.state === 'done') fates.follow(entry.id)
+    })
     running.set(entry.id, upload)
     interrupted.value = interrupted.value.filter(one => one.name !== file.name || one.sizeBytes !== file.size)
     void upload.run()
@@ -59,8 +76,9 @@ export const useUploads = defineStore('uploads', () => {
     if (file.size > MOST_CAPTION_BYTES) return change(id, { state: 'failed', message: `${file.name} has more than 5 MB, which no clip’s captions need, so it was not sent. Check that it is a caption file.` })
     change(id, { state: 'sending' })
     try {
-      await api(`/api/sessions/${place.sessionId}/captions`, { method: 'POST', query: { name: file.name }, body: file, headers: { 'Content-Type': 'application/octet-stream' } })
-      change(id, { state: 'done', sentBytes: file.size })
+      const { trackId } = await api<{ trackId: string }>(`/api/sessions/${place.sessionId}/captions`, { method: 'POST', query: { name: file.name }, body: file, headers: { 'Content-Type': 'application/octet-stream' } })
+      change(id, { state: 'done', sentBytes: file.size, trackId })
+      fates.follow(id)
     }
     catch (error) {
       change(id, { state: 'failed', message: asProblem(error).message })
@@ -68,13 +86,13 @@ export const useUploads = defineStore('uploads', () => {
   }
 
   function newEntry(file: File, place: UploadPlace, kind: UploadEntry['kind']): UploadEntry {
-    const entry: UploadEntry = { id: ++lastId, name: file.name, sizeBytes: file.size, kind, ...place, state: 'waiting', clipId: null, sentBytes: 0, bytesPerSecond: null, secondsLeft: null, message: '', double: null }
+    const entry: UploadEntry = { id: ++lastId, name: file.name, sizeBytes: file.size, kind, ...place, trackId: null, broken: '', state: 'waiting', clipId: null, sentBytes: 0, bytesPerSecond: null, secondsLeft: null, message: '', double: null }
     entries.value.push(entry)
     remember()
     return entry
   }
 
-  function change(id: number, progress: Partial<UploadProgress>): void {
+  function change(id: number, progress: Partial<UploadEntry>): void {
     const entry = entries.value.find(one => one.id === id)
     if (!entry) return
     const before = entry.state

@@ -1,5 +1,6 @@
 import { and, eq, isNotNull, isNull, sql } from 'drizzle-orm'
 import type { TrackChanges } from '#shared/schemas/captions'
+import { isBroken } from '#shared/utils/clipFailures'
 import { DomainError, notFound } from '#shared/utils/errors'
 import { pairCaptions } from '#server/indexing/captions/pairing'
 import { addJob } from '../adapters/queue'
@@ -32,11 +33,12 @@ export async function addCaptionFile(database: Database, storage: Storage, sessi
   })
 }
 
-/** Pairs a caption file with another clip of its session by hand, or says its language. */
+/** Pairs a caption file with another clip of its session by hand, says its language, or that it belongs where it is. */
 export async function updateTrack(database: Database, trackId: string, userId: string, changes: TrackChanges): Promise<void> {
   await database.transaction(async (tx) => {
     const track = await lockTrack(tx, trackId)
     if (changes.language !== undefined) await tx.update(captionTracks).set({ language: changes.language }).where(eq(captionTracks.id, trackId))
+    if (changes.kept !== undefined) await tx.update(captionTracks).set({ kept: changes.kept }).where(eq(captionTracks.id, trackId))
     if (changes.clipId !== undefined && changes.clipId !== track.clipId) await pairWith(tx, track, changes.clipId)
     await announce(tx, { sessionId: track.sessionId, kind: 'captions', id: trackId, by: userId })
   })
@@ -50,12 +52,13 @@ async function pairWith(tx: Transaction, track: CaptionTrack, clipId: string | n
     await tx.delete(cues).where(eq(cues.trackId, track.id))
   }
   else {
-    const [clip] = await tx.select({ id: clips.id }).from(clips).where(and(eq(clips.id, clipId), eq(clips.sessionId, track.sessionId)))
+    const [clip] = await tx.select({ name: clips.name, failure: clips.failure }).from(clips).where(and(eq(clips.id, clipId), eq(clips.sessionId, track.sessionId)))
     if (!clip) throw new DomainError('bad-input', 'That clip is not in this session. Nothing was changed.')
+    if (isBroken(clip)) throw new DomainError('bad-input', `${clip.name} could not be read, so no captions can belong to it. Choose another clip. Nothing was changed.`)
     // The captions move with their corrections; the job then holds them against their new clip.
     await tx.update(cues).set({ clipId }).where(eq(cues.trackId, track.id))
   }
-  const [paired] = await tx.update(captionTracks).set({ clipId, read: false }).where(eq(captionTracks.id, track.id)).returning()
+  const [paired] = await tx.update(captionTracks).set({ clipId, read: false, doubt: null, kept: false }).where(eq(captionTracks.id, track.id)).returning()
   for (const changed of [track.clipId, clipId]) if (changed) await refreshPassages(tx, changed)
   await enqueueReading(tx, paired!)
 }
@@ -84,7 +87,9 @@ export async function pairWaitingTracks(tx: Transaction, sessionId: string): Pro
 }
 
 async function clipFor(tx: Transaction, sessionId: string, captionName: string): Promise<{ clipId: string | null, language: string | null }> {
-  const rows = await tx.select({ id: clips.id, name: clips.name }).from(clips).where(eq(clips.sessionId, sessionId))
+  const all = await tx.select({ id: clips.id, name: clips.name, failure: clips.failure }).from(clips).where(eq(clips.sessionId, sessionId))
+  // Nothing is ever said over a file that cannot be read: its captions wait for the one that is sent instead.
+  const rows = all.filter(clip => !isBroken(clip))
   const [pairing] = pairCaptions(rows.map(clip => clip.name), [captionName])
   const named = rows.filter(clip => clip.name === pairing!.clipName)
   // Two clips of one name (a camera that counts from 1 every day): a person must say which.

@@ -1,9 +1,11 @@
 import { and, eq, inArray, sql } from 'drizzle-orm'
 import type { ClipFailure } from '#shared/types/media'
 import type { ClipTask, TaskState } from '#shared/types/trade'
+import { isBroken } from '#shared/utils/clipFailures'
 import { addJob } from '../adapters/queue'
 import type { Database, Executor, Transaction } from '../database/client'
 import { captionTracks, type Clip, clips, clipTasks } from '../database/schema'
+import { releaseTracks } from './captionHomes'
 import { announce } from './live'
 
 type ClipPlace = Pick<Clip, 'id' | 'sessionId'>
@@ -48,7 +50,10 @@ export async function settleClip(tx: Transaction, clipId: string): Promise<void>
 /** Ends a task for good, with words for the builder; the clip fails with it unless captions did. */
 export async function failTask(tx: Transaction, clip: ClipPlace, task: ClipTask, failure: ClipFailure): Promise<void> {
   await setTask(tx, clip, task, { state: 'failed', message: failure.message })
-  if (task !== 'read-captions') await tx.update(clips).set({ failure }).where(eq(clips.id, clip.id))
+  if (task !== 'read-captions') {
+    await tx.update(clips).set({ failure }).where(eq(clips.id, clip.id))
+    if (isBroken({ failure })) await releaseTracks(tx, clip)
+  }
   await settleClip(tx, clip.id)
 }
 

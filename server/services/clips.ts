@@ -58,14 +58,14 @@ export async function alignSession(tx: Transaction, sessionId: string): Promise<
 
 /**
  * Removes a clip with its chapters; what lies in the storage follows by a job. Caption files of a clip that never
- * finished uploading go back to waiting, those of a finished one go with it.
+ * finished uploading go back to waiting, those of a finished one go with it. (A broken clip has let go of its own already.)
  */
 export async function deleteClip(database: Database, clipId: string, userId: string | null): Promise<void> {
   await database.transaction(async (tx) => {
     const clip = await lockClip(tx, clipId)
     if (clip.state === 'uploading') {
       await tx.delete(cues).where(eq(cues.clipId, clipId))
-      await tx.update(captionTracks).set({ clipId: null, read: false }).where(eq(captionTracks.clipId, clipId))
+      await tx.update(captionTracks).set({ clipId: null, read: false, doubt: null, kept: false }).where(eq(captionTracks.clipId, clipId))
     }
     await dropClip(tx, clip)
     await alignSession(tx, clip.sessionId)

@@ -13,7 +13,7 @@ import { refreshPassages } from './search/passages'
 export async function listCues(executor: Executor, sessionId: string): Promise<CueView[]> {
   const rows = await executor.select({
     id: cues.id, trackId: cues.trackId, clipId: cues.clipId, startMs: cues.startMs, endMs: cues.endMs, text: cues.text,
-    edited: sql<boolean>`${cues.originalText} is not null`, version: cues.version,
+    edited: sql<boolean>`${cues.originalText} is not null`, original: cues.originalText, version: cues.version,
   }).from(cues).innerJoin(captionTracks, eq(captionTracks.id, cues.trackId)).where(eq(captionTracks.sessionId, sessionId)).orderBy(asc(cues.clipId), asc(cues.startMs), asc(cues.endMs))
   return rows
 }
@@ -49,7 +49,7 @@ export async function trackCues(executor: Executor, trackId: string): Promise<{ 
 }
 
 function toView(cue: CueRow): CueView {
-  return { id: cue.id, trackId: cue.trackId, clipId: cue.clipId, startMs: cue.startMs, endMs: cue.endMs, text: cue.text, edited: cue.originalText !== null, version: cue.version }
+  return { id: cue.id, trackId: cue.trackId, clipId: cue.clipId, startMs: cue.startMs, endMs: cue.endMs, text: cue.text, edited: cue.originalText !== null, original: cue.originalText, version: cue.version }
 }
 
 /** A caption file's captions written out, named after the file that was uploaded. */

@@ -106,6 +106,7 @@ async function listTracks(executor: Executor, sessionId: string): Promise<TrackV
     embedded: sql<boolean>`${captionTracks.embeddedStream} is not null`,
     // Written out: in a select from one table Drizzle leaves the table's name off, and "id" would be the caption's.
     cueCount: sql<number>`(select count(*)::int from cues where cues.track_id = caption_tracks.id)`,
+    doubt: sql<string | null>`case when ${captionTracks.kept} then null else ${captionTracks.doubt} end`,
     warnings: captionTracks.warnings, failure: captionTracks.failure, read: captionTracks.read,
   }).from(captionTracks).where(eq(captionTracks.sessionId, sessionId)).orderBy(asc(captionTracks.name), desc(captionTracks.createdAt))
 }

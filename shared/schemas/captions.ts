@@ -10,6 +10,8 @@ const language = z.string().trim().max(35).refine(isLanguage, 'Write the languag
 export const trackChangesSchema = z.object({
   clipId: z.uuid().nullable().optional(),
   language: language.optional(),
+  /** Whether it belongs to its clip in spite of a doubt. */
+  kept: z.boolean().optional(),
 })
 export type TrackChanges = z.infer<typeof trackChangesSchema>
 

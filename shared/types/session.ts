@@ -56,13 +56,15 @@ export interface TrackView {
   language: string
   embedded: boolean
   cueCount: number
+  /** Why it may belong to another clip; null when nothing speaks against it or a person said that it belongs. */
+  doubt: string | null
   warnings: string[]
   failure: string | null
   read: boolean
 }
 
 /** GET /api/sessions/:session/cues */
-export interface CueView { id: string, trackId: string, clipId: string, startMs: number, endMs: number, text: string, edited: boolean, version: number }
+export interface CueView { id: string, trackId: string, clipId: string, startMs: number, endMs: number, text: string, /** Corrected by a person; `original` is then the words as they came. */ edited: boolean, original: string | null, version: number }
 
 /** GET /api/sessions/:session/chapters */
 export interface ChapterView {

@@ -1,10 +1,12 @@
 import { eq } from 'drizzle-orm'
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest'
-import { type CaptionTrack, captionTracks, clipTasks, cues, passages, type Session } from '#server/database/schema'
+import { type CaptionTrack, captionTracks, type Clip, clipTasks, cues, passages, type Session } from '#server/database/schema'
 import { MAX_CAPTION_BYTES, readCaptions as parse } from '#server/indexing/captions/readCaptions'
-import { addCaptionFile, deleteTrack, originalAddress, updateTrack } from '#server/services/captions'
+import { addCaptionFile, deleteTrack, originalAddress, pairWaitingTracks, updateTrack } from '#server/services/captions'
+import { failTask } from '#server/services/clipTasks'
 import { exportTrack, listCues, updateCue } from '#server/services/cues'
 import { clipCaptions } from '#server/services/media'
+import { readSession } from '#server/services/sessions'
 import { cueChangesSchema, trackChangesSchema } from '#shared/schemas/captions'
 import type { WorkerContext } from '../../workers/media/context'
 import { readCaptions } from '../../workers/media/readCaptions'
@@ -90,7 +92,7 @@ describe('a caption file', () => {
     await updateTrack(db(), trackId, bench.builder.id, { clipId: short.id })
     await read(trackId)
     expect(await texts(trackId)).toEqual(['First!', 'late'])
-    expect((await track(trackId)).warnings.join(' ')).toContain('3 min 12 s longer than the clip')
+    expect((await track(trackId)).doubt).toContain('3 min 12 s longer than the clip')
     expect(await db().select().from(passages).where(eq(passages.clipId, long.id))).toEqual([])
     await expect(updateTrack(db(), trackId, bench.builder.id, { clipId: null })).rejects.toMatchObject({ code: 'conflict' })
   })
@@ -154,6 +156,60 @@ describe('odd and bad files', () => {
   }, 60_000)
 })
 
+describe('a file that may belong to another clip', () => {
+  const tooLong = vtt('00:01.000 --> 00:02.000\nHere', '09:00.000 --> 09:10.000\nElsewhere')
+  const shown = async (id: string) => (await readSession(db(), session.id, { build: bench.build, role: 'builder' })).tracks.find(one => one.id === id)
+
+  it('says so until a person says that it belongs, and asks again of another clip', async () => {
+    const short = await makeClip(db(), session, { name: 'a.mp4', durationMs: 60_000 })
+    const other = await makeClip(db(), session, { name: 'b.mp4', durationMs: 60_000 })
+    const { trackId } = await add('a.vtt', tooLong)
+    await read(trackId)
+    expect(await shown(trackId)).toMatchObject({ clipId: short.id, read: true, warnings: [], doubt: expect.stringContaining('1 caption starts after its end') as string })
+    await updateTrack(db(), trackId, bench.builder.id, { kept: true })
+    await read(trackId)
+    expect((await shown(trackId))!.doubt).toBeNull()
+    await updateTrack(db(), trackId, bench.builder.id, { clipId: other.id })
+    await read(trackId)
+    expect(await shown(trackId)).toMatchObject({ clipId: other.id, doubt: expect.stringContaining('longer than the clip') as string })
+  })
+
+  it('has nothing to say of a clip that is long enough', async () => {
+    await makeClip(db(), session, { name: 'a.mp4', durationMs: 600_000 })
+    const { trackId } = await add('a.vtt', tooLong)
+    await read(trackId)
+    expect((await shown(trackId))!.doubt).toBeNull()
+  })
+})
+
+describe('a clip whose file is broken', () => {
+  const breakClip = (clip: Clip, code: 'not-a-video' | 'internal') => db().transaction(tx => failTask(tx, clip, 'probe-clip', { code, message: 'Broken.' }))
+
+  it('lets go of its captions, which go to the file that is sent instead', async () => {
+    const broken = await makeClip(db(), session, { name: 'a.mp4' })
+    const { trackId } = await add('a.vtt', vtt('00:01.000 --> 00:02.000\nHere'))
+    await read(trackId)
+    await breakClip(broken, 'not-a-video')
+    expect(await track(trackId)).toMatchObject({ clipId: null, read: false })
+    await expect(updateTrack(db(), trackId, bench.builder.id, { clipId: broken.id })).rejects.toMatchObject({ code: 'bad-input', message: expect.stringContaining('could not be read') as string })
+    const whole = await makeClip(db(), session, { name: 'a.mp4' })
+    await db().transaction(tx => pairWaitingTracks(tx, session.id))
+    expect(await track(trackId)).toMatchObject({ clipId: whole.id })
+  })
+
+  it('keeps captions that somebody corrected, and those of a failure that may mend', async () => {
+    const broken = await makeClip(db(), session, { name: 'a.mp4' })
+    const { trackId } = await add('a.vtt', vtt('00:01.000 --> 00:02.000\nHere'))
+    await read(trackId)
+    await breakClip(broken, 'internal')
+    expect((await track(trackId)).clipId).toBe(broken.id)
+    await updateCue(db(), (await listCues(db(), session.id))[0]!.id, bench.builder.id, { text: 'There', version: 1 })
+    await breakClip(broken, 'not-a-video')
+    expect((await track(trackId)).clipId).toBe(broken.id)
+    expect(await texts(trackId)).toEqual(['There'])
+  })
+})
+
 describe('correcting in place', () => {
   it('keeps the words as they came, refuses an older version, and takes a correction back', async () => {
     await makeClip(db(), session, { name: 'a.mp4' })
@@ -161,10 +217,10 @@ describe('correcting in place', () => {
     await read(trackId)
     const [cue] = await listCues(db(), session.id)
     const changed = await updateCue(db(), cue!.id, bench.builder.id, { text: 'Glue the transom', version: 1 })
-    expect(changed).toMatchObject({ text: 'Glue the transom', edited: true, version: 2 })
+    expect(changed).toMatchObject({ text: 'Glue the transom', edited: true, original: 'Glue the transfer', version: 2 })
     await expect(updateCue(db(), cue!.id, bench.builder.id, { text: 'Mine', version: 1 })).rejects.toMatchObject({ code: 'conflict', data: { current: { text: 'Glue the transom', version: 2 } } })
     expect((await db().select().from(cues).where(eq(cues.id, cue!.id)))[0]!.originalText).toBe('Glue the transfer')
-    expect(await updateCue(db(), cue!.id, bench.builder.id, { text: 'Glue the transfer', version: 2 })).toMatchObject({ edited: false, version: 3 })
+    expect(await updateCue(db(), cue!.id, bench.builder.id, { text: 'Glue the transfer', version: 2 })).toMatchObject({ edited: false, original: null, version: 3 })
   })
 
   it('accepts words only', () => {

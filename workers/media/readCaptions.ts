@@ -56,14 +56,14 @@ async function keep(tx: Transaction, trackId: string, result: CaptionReading | s
   const [track] = await tx.select().from(captionTracks).where(eq(captionTracks.id, trackId)).for('update')
   if (!track) return
   if (typeof result === 'string') {
-    await tx.update(captionTracks).set({ failure: result, warnings: [], read: false }).where(eq(captionTracks.id, trackId))
+    await tx.update(captionTracks).set({ failure: result, doubt: null, warnings: [], read: false }).where(eq(captionTracks.id, trackId))
   }
   else {
     const { list, warnings } = storable(result)
     const durationMs = await durationOf(tx, track)
-    const against = durationMs === null ? [] : checkAgainstClip(list, durationMs)
+    const doubt = durationMs === null ? null : checkAgainstClip(list, durationMs)
     if (track.clipId) await insertCues(tx, track, track.clipId, list)
-    await tx.update(captionTracks).set({ failure: null, warnings: [...against, ...warnings], read: track.clipId !== null }).where(eq(captionTracks.id, trackId))
+    await tx.update(captionTracks).set({ failure: null, doubt, warnings, read: track.clipId !== null }).where(eq(captionTracks.id, trackId))
   }
   if (track.clipId) await settle(tx, track.clipId, track.sessionId)
   await announce(tx, { sessionId: track.sessionId, kind: 'captions', id: trackId })

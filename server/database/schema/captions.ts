@@ -22,6 +22,10 @@ export const captionTracks = pgTable('caption_tracks', {
   sizeBytes: integer('size_bytes').notNull(),
   /** What was odd about the file, in words. */
   warnings: jsonb('warnings').$type<string[]>().notNull().default(sql`'[]'::jsonb`),
+  /** Why the file may belong to another clip, in words; null when nothing speaks against this one. */
+  doubt: text('doubt'),
+  /** A person said that it belongs here, whatever the doubt. */
+  kept: boolean('kept').notNull().default(false),
   /** Why nothing could be read, in words; null when it was read or waits. */
   failure: text('failure'),
   read: boolean('read').notNull().default(false),

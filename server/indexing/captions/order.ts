@@ -1,6 +1,6 @@
 import type { Cue } from '#shared/types/captions'
 import { formatClock } from '#shared/utils/timecode'
-import { WarningList } from './warnings'
+import type { WarningList } from './warnings'
 
 /** The database keeps milliseconds in four bytes; more than 24 days is a mistake in any clip. */
 const LAST_STORED_MS = 2_147_483_647
@@ -46,19 +46,17 @@ const nameOf = (cue: Cue): string => `The caption at ${clock(cue)}`
 const TAIL_MS = 2000
 
 /**
- * Compares captions with the clip that they are to belong to.
+ * Compares captions with the clip that they are to belong to: why they may belong to another one, in words for
+ * people, or null when nothing speaks against it. Captions that end early say nothing: who films is often silent.
  * @param durationMs length of the clip in milliseconds
  */
-export function checkAgainstClip(cues: readonly Cue[], durationMs: number): string[] {
-  const warnings = new WarningList()
+export function checkAgainstClip(cues: readonly Cue[], durationMs: number): string | null {
   const last = cues.reduce((end, cue) => Math.max(end, cue.endMs, cue.startMs), 0)
   const over = last - durationMs
-  if (cues.length > 0 && over > TAIL_MS) {
-    warnings.add(() => `The captions run ${spokenLength(over)} longer than the clip: do they belong to another clip?`)
-    const outside = cues.filter(cue => cue.startMs >= durationMs).length
-    if (outside > 0) warnings.add(() => `${outside === 1 ? '1 caption starts' : `${outside} captions start`} after the end of the clip and will not be seen. ${outside === 1 ? 'It was' : 'They were'} kept.`)
-  }
-  return warnings.toArray()
+  if (over <= TAIL_MS) return null
+  const outside = cues.filter(cue => cue.startMs >= durationMs).length
+  const unseen = outside ? ` ${outside === 1 ? '1 caption starts' : `${outside} captions start`} after its end and will not be seen.` : ''
+  return `The captions run ${spokenLength(over)} longer than the clip.${unseen}`
 }
 
 /** '3 min 10 s', '45 s', '1 h 2 min': whole seconds, at most two units, rounded to the nearest. */

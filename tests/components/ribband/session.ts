@@ -20,4 +20,4 @@ export const chapters: ChapterView[] = [
   chapter('c', { clipId: 'clip1', startMs: 0, endMs: 30_000, stepId: 'step7', operation: 'clean-up' }),
 ]
 
-export const cues: CueView[] = [{ id: 'cue', trackId: 't', clipId: 'clip0', startMs: 21_000, endMs: 24_000, text: 'mix one small batch', edited: false, version: 1 }]
+export const cues: CueView[] = [{ id: 'cue', trackId: 't', clipId: 'clip0', startMs: 21_000, endMs: 24_000, text: 'mix one small batch', edited: false, original: null, version: 1 }]

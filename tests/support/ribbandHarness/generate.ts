@@ -68,7 +68,7 @@ function makeCues(clipId: string, length: number, count: number, random: () => n
     const startMs = Math.round(index * slot + random() * slot * 0.3)
     const words = 4 + Math.floor(random() * 7)
     const text = Array.from({ length: words }, () => WORDS[word++ % WORDS.length]).join(' ')
-    cues.push({ id: `${clipId}-cue${index}`, trackId: 'track', clipId, startMs, endMs: Math.round(startMs + Math.min(slot * 0.68, words * 330)), text, edited: false, version: 1 })
+    cues.push({ id: `${clipId}-cue${index}`, trackId: 'track', clipId, startMs, endMs: Math.round(startMs + Math.min(slot * 0.68, words * 330)), text, edited: false, original: null, version: 1 })
   }
   return cues
 }

@@ -8,7 +8,7 @@ const clip = (id: string, offsetMs: number, durationMs: number | null, camera = 
   id, name: `${id}.mp4`, sizeBytes: 1, state: 'ready', failure: null, durationMs, offsetMs, offsetByHand: false, camera, recordedAt: null, recordedAtSource: null,
   video: null, hasSound: false, src: null, poster: null, sheets: null, peaks: null, sceneChangesMs: [500], silences: [], warnings: [], tasks: [],
 })
-const cue = (id: string, clipId: string, startMs: number, endMs: number): CueView => ({ id, trackId: 't', clipId, startMs, endMs, text: id, edited: false, version: 1 })
+const cue = (id: string, clipId: string, startMs: number, endMs: number): CueView => ({ id, trackId: 't', clipId, startMs, endMs, text: id, edited: false, original: null, version: 1 })
 const chapter = (id: string, clipId: string, startMs: number, endMs: number): ChapterView => ({
   id, clipId, startMs, endMs, stepId: null, operation: 'cut', partIds: [], inking: 'inked', confidence: null, evidence: [], note: '', version: 1, inkedBy: null, updatedBy: null,
 })

@@ -8,7 +8,7 @@ const clips = placeClips([
   { id: 'late', durationMs: 20_000, offsetMs: 100_000, camera: '' },
   { id: 'early', durationMs: 20_000, offsetMs: 0, camera: '' },
 ]).clips
-const cue = (id: string, clipId: string, startMs: number, endMs: number, text = id, trackId = 't'): CueView => ({ id, trackId, clipId, startMs, endMs, text, edited: false, version: 1 })
+const cue = (id: string, clipId: string, startMs: number, endMs: number, text = id, trackId = 't'): CueView => ({ id, trackId, clipId, startMs, endMs, text, edited: false, original: null, version: 1 })
 const chapter = (id: string, clipId: string, startMs: number, endMs: number) => ({ id, clipId, startMs, endMs }) as ChapterView
 const cues = [cue('d', 'late', 0, 2000, 'and clamp it'), cue('b', 'early', 2000, 4000, 'Mix the epoxy'), cue('a', 'early', 0, 2000, 'Good morning'), cue('c', 'early', 4000, 6000, 'and spread the\nepoxy thinly')]
 const rows = layTranscript(clips, cues, [chapter('x', 'early', 1900, 5200)])
