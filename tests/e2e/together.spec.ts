@@ -190,3 +190,26 @@ test('both mark the same stretch: the second sees what is there and cuts back or
   await expect(his.getByText('cannot be undone: somebody has changed the chapter since')).toBeVisible()
   expect((await chaptersOf()).map(chapter => chapter.note)).toContain('five screws')
 })
+
+test('what cannot be sent is kept, not left behind unasked, and sent by itself when the site is back', async ({ visit }) => {
+  const { hers, his } = await bothThere(visit)
+  await his.route('**/chapters', route => route.request().method() === 'POST' ? route.abort() : route.fallback())
+  await mark(his, 2, 6, 'transom', 'glue')
+  const kept = his.getByRole('alert').filter({ hasText: 'Not saved, because the site cannot be reached: Mark step 1, glue' })
+  await expect(kept).toBeVisible()
+  await expectAccessible(his)
+
+  await his.getByRole('navigation', { name: 'Build' }).getByRole('link', { name: 'Plan' }).click()
+  const dialog = his.getByRole('dialog', { name: 'Leave with work that is not saved?' })
+  await expect(dialog).toContainText('Mark step 1, glue')
+  await dialog.getByRole('button', { name: 'Stay here' }).click()
+  await expect(dialog).toHaveCount(0)
+  await expect(his).toHaveURL(new RegExp(`/sessions/${session}$`))
+  await expect(kept).toBeVisible()
+
+  await his.unroute('**/chapters')
+  await his.evaluate(() => window.dispatchEvent(new Event('online')))
+  await expect(kept).toHaveCount(0)
+  await expect(row(hers, 'Fit the bow transom')).toHaveCount(1)
+  expect((await chaptersOf()).map(({ startMs, endMs, operation }) => ({ startMs, endMs, operation }))).toEqual([{ startMs: 2000, endMs: 6000, operation: 'glue' }])
+})
