@@ -9,6 +9,8 @@ interface Question {
   danger?: boolean
   /** Must be typed before the button works, for what cannot be undone. */
   typed?: string
+  /** What is typed: "the name" unless something else is meant. */
+  typedWhat?: string
 }
 
 /** Asks before something is destroyed: `if (await confirm({ … }))`. The dialog lives in the layout. */

@@ -57,6 +57,7 @@ export const TABLE: Record<string, Row> = {
     return { path: `/api/builds/${build.id}`, body: { name: build.name } }
   }),
   'GET /api/builds/[build]/bench': work(f => ({ path: `/api/builds/${f.build.id}/bench` })),
+  'GET /api/builds/[build]/holdings': run(f => ({ path: `/api/builds/${f.build.id}/holdings` })),
   'GET /api/builds/[build]/plan': watch(f => ({ path: `/api/builds/${f.build.id}/plan` })),
   'GET /api/builds/[build]/plan/export': watch(f => ({ path: `/api/builds/${f.build.id}/plan/export?what=steps&format=csv` })),
   'POST /api/builds/[build]/plan/preview': run(f => ({ path: `/api/builds/${f.build.id}/plan/preview`, body: { text: csv } })),
@@ -76,6 +77,7 @@ export const TABLE: Record<string, Row> = {
   'GET /api/sessions/[session]': inner(f => ({ path: `/api/sessions/${f.session.id}` })),
   'PATCH /api/sessions/[session]': inner(f => ({ path: `/api/sessions/${f.session.id}`, body: { place: 'Shed' } })),
   'DELETE /api/sessions/[session]': innerRun(async f => ({ path: `/api/sessions/${(await f.anotherSession()).id}` })),
+  'GET /api/sessions/[session]/holdings': innerRun(f => ({ path: `/api/sessions/${f.session.id}/holdings` })),
   'GET /api/sessions/[session]/cues': inner(f => ({ path: `/api/sessions/${f.session.id}/cues` })),
   'GET /api/sessions/[session]/chapters': inner(f => ({ path: `/api/sessions/${f.session.id}/chapters` })),
   'POST /api/sessions/[session]/chapters': same(f => ({
@@ -90,6 +92,7 @@ export const TABLE: Record<string, Row> = {
   })),
   'PATCH /api/clips/[clip]': inner(f => ({ path: `/api/clips/${f.clip.id}`, body: { camera: 'left' } })),
   'DELETE /api/clips/[clip]': innerRun(async f => ({ path: `/api/clips/${(await f.anotherClip()).id}` })),
+  'GET /api/clips/[clip]/holdings': innerRun(f => ({ path: `/api/clips/${f.clip.id}/holdings` })),
   'POST /api/clips/[clip]/retry': inner(f => ({ path: `/api/clips/${f.clip.id}/retry`, body: {} })),
   'POST /api/clips/[clip]/upload/parts': inner(async f => ({ path: `/api/clips/${(await f.uploadingClip()).id}/upload/parts`, body: { partNumbers: [1] } })),
   // Nothing was sent, so the one who may ask is told which parts are missing.
