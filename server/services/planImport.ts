@@ -6,7 +6,7 @@ import type { PlanView } from '#shared/types/plan'
 import { DomainError } from '#shared/utils/errors'
 import type { Database, Executor, Transaction } from '../database/client'
 import { parts, steps } from '../database/schema'
-import { kindOfTable, PART_COLUMNS, STEP_COLUMNS } from '../indexing/plan/columns'
+import { kindOfTable, knownHeadings, PART_COLUMNS, STEP_COLUMNS } from '../indexing/plan/columns'
 import { compareParts, type PartPlacing } from '../indexing/plan/compareParts'
 import { comparePlan, partFinder, type PlanComparison } from '../indexing/plan/comparePlan'
 import { placeNewRows } from '../indexing/plan/order'
@@ -51,23 +51,25 @@ export async function exportTable(executor: Executor, buildId: string, what: Pla
   return what === 'steps' ? writePlan(plan, format) : writeParts(plan.parts, format)
 }
 
+type Columns = Pick<ImportPreview, 'columns'>
 interface Prepared { preview: ImportPreview, steps?: PlanComparison, parts?: PartPlacing[] }
 
 function prepare(plan: PlanView, source: PlanSource): Prepared {
   const table = readTable('text' in source ? source.text : Buffer.from(source.file, 'base64'))
-  const what = kindOfTable(table.headings)
+  const what = source.as ?? kindOfTable(table.headings)
   if (!what) throw unreadable(`The first row names no column of a plan, so nothing was read. For steps it names ${STEP_COLUMNS.join(', ')}; for parts ${PART_COLUMNS.join(', ')}.`)
-  return what === 'steps' ? prepareSteps(plan, readPlanTable(table)) : prepareParts(plan, readPartsTable(table))
+  const columns = knownHeadings(table.headings, what)
+  return what === 'steps' ? prepareSteps(plan, { ...readPlanTable(table), columns }) : prepareParts(plan, { ...readPartsTable(table), columns })
 }
 
-function prepareSteps(plan: PlanView, { steps: rows, ...reading }: ReturnType<typeof readPlanTable>): Prepared {
+function prepareSteps(plan: PlanView, { steps: rows, ...reading }: ReturnType<typeof readPlanTable> & Columns): Prepared {
   const comparison = comparePlan(plan, rows)
   const { newParts, restoredParts } = comparison
   const body = { ...reading, rows: comparison.placings.map(placing => placing.preview), newParts, restoredParts, staying: comparison.staying.map(step => `${step.number} ${step.title}`) }
   return { preview: { ...body, seen: digest(plan, body.rows) }, steps: comparison }
 }
 
-function prepareParts(plan: PlanView, { parts: rows, ...reading }: ReturnType<typeof readPartsTable>): Prepared {
+function prepareParts(plan: PlanView, { parts: rows, ...reading }: ReturnType<typeof readPartsTable> & Columns): Prepared {
   const { placings, staying } = compareParts(plan.parts, rows)
   const body = { ...reading, rows: placings.map(placing => placing.preview), newParts: [], restoredParts: [], staying: staying.map(part => part.name) }
   return { preview: { ...body, seen: digest(plan, body.rows) }, parts: placings }

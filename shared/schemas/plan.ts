@@ -66,10 +66,13 @@ export const planKindSchema = z.enum(['steps', 'parts'], 'Choose steps or parts'
 /** Bytes of a table at most; base64 is a third longer. */
 export const MOST_TABLE_BYTES = 2_000_000
 
+/** What to read a table as, when its headings are not to decide; and which preview is meant. */
+const reading = { as: planKindSchema.optional(), seen: z.string().max(64).optional() }
+
 /** A table to import: as pasted, or a file's bytes in base64 so that its encoding can be found out. */
 export const planSourceSchema = z.union([
-  z.object({ text: z.string().max(MOST_TABLE_BYTES, 'The text is over 2 MB, too long for a plan'), seen: z.string().max(64).optional() }),
-  z.object({ file: z.string().max(MOST_TABLE_BYTES * 1.4, 'The file is over 2 MB, too large for a plan').pipe(z.base64('The file was damaged on its way here. Choose it again')), seen: z.string().max(64).optional() }),
+  z.object({ text: z.string().max(MOST_TABLE_BYTES, 'The text is over 2 MB, too long for a plan'), ...reading }),
+  z.object({ file: z.string().max(MOST_TABLE_BYTES * 1.4, 'The file is over 2 MB, too large for a plan').pipe(z.base64('The file was damaged on its way here. Choose it again')), ...reading }),
 ], 'Paste a table or choose a file')
 
 export const planExportSchema = z.object({ what: planKindSchema.default('steps'), format: z.enum(['csv', 'md'], 'Choose csv or md').default('csv') })

@@ -36,6 +36,8 @@ export interface PreviewRow {
 /** POST /api/builds/:build/plan/preview: what an import would do; nothing is written. */
 export interface ImportPreview extends TableInfo {
   what: 'steps' | 'parts'
+  /** Headings, as written, that mean something in a table of this kind: why it was taken for one. */
+  columns: string[]
   rows: PreviewRow[]
   problems: TableProblem[]
   /** Parts that steps name and the list does not have: they would be added. */

@@ -23,6 +23,20 @@ const plan = () => readPlanView(test.database, build.id, { archived: true })
 const preview = (source: Parameters<typeof previewImport>[2]) => previewImport(test.database, build.id, source)
 const take = (source: Parameters<typeof importTable>[2]) => importTable(test.database, build.id, source)
 
+describe('a table of the other kind', () => {
+  it('is known by its columns, and read as the other when that is wanted', async () => {
+    const text = 'Part,No,Task,Qty\nfin,1,Cut the fin,2'
+    expect(await preview({ text })).toMatchObject({ what: 'steps', columns: ['No', 'Task'], unknownColumns: ['Part', 'Qty'] })
+    expect(await preview({ text, as: 'parts' })).toMatchObject({ what: 'parts', columns: ['Part', 'Qty'], unknownColumns: ['No', 'Task'], rows: [{ title: 'fin', outcome: 'new' }] })
+    expect(await take({ text, as: 'parts' })).toMatchObject({ what: 'parts', added: 1 })
+    expect((await plan()).steps).toEqual([])
+  })
+
+  it('that cannot be read so says which column it would need', async () => {
+    await expect(preview({ ...planFile, as: 'parts' })).rejects.toMatchObject({ code: 'unreadable', message: expect.stringContaining('no column “name”') as string })
+  })
+})
+
 describe('importing a whole plan into an empty build', () => {
   it('adds parts and steps in the order of their files', async () => {
     expect(await take(partsFile)).toEqual({ what: 'parts', added: 17, changed: 0, same: 0, newParts: 0 })

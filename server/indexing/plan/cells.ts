@@ -2,7 +2,7 @@ import type { z } from 'zod'
 import { cleanLine } from '#shared/schemas/text'
 import type { TableProblem } from '#shared/types/planImport'
 import { MOST_ROWS } from '#shared/schemas/plan'
-import { columnName } from './columns'
+import { columnsOf, type TableKind } from './columns'
 import { type Table, unreadable } from './table'
 
 /** A row of a table with its cells by column; a column that the table does not have is undefined. */
@@ -19,8 +19,8 @@ export interface NamedTable<Column extends string> {
  * Finds the columns of a table by their headings, in any order and letter case.
  * @throws DomainError `unreadable` when a required column is missing or one comes twice
  */
-export function nameColumns<Column extends string>(table: Table, known: readonly Column[], required: readonly Column[]): NamedTable<Column> {
-  const names = table.headings.map(columnName)
+export function nameColumns<Column extends string>(table: Table, kind: TableKind, known: readonly Column[], required: readonly Column[]): NamedTable<Column> {
+  const names = columnsOf(table.headings, kind)
   const twice = known.find(column => names.indexOf(column) !== names.lastIndexOf(column))
   if (twice) throw unreadable(`The column “${twice}” is there twice. Nothing was read. Take one of them out.`)
   const missing = required.filter(column => !names.includes(column))

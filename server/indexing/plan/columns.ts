@@ -9,17 +9,40 @@ export function columnName(heading: string): string {
   return heading.toLowerCase().replace(/[^\p{L}\p{N}]+/gu, '_').replace(/^_+|_+$/g, '')
 }
 
-const STEPS: readonly string[] = STEP_COLUMNS
-const PARTS: readonly string[] = PART_COLUMNS
+export type TableKind = 'steps' | 'parts'
+const KNOWN: Record<TableKind, readonly string[]> = { steps: STEP_COLUMNS, parts: PART_COLUMNS }
 
-export const countStepColumns = (headings: string[]) => headings.filter(heading => STEPS.includes(columnName(heading))).length
-export const countPartColumns = (headings: string[]) => headings.filter(heading => PARTS.includes(columnName(heading))).length
-export const countColumns = (headings: string[]) => countStepColumns(headings) + countPartColumns(headings)
+/** What people head the same columns with in sheets of their own. A bare "thickness" is left out: nobody knows its unit. */
+const ALIASES: Record<TableKind, Record<string, string>> = {
+  steps: { no: 'number', nr: 'number', step: 'number', step_no: 'number', step_number: 'number', phase: 'stage', section: 'stage', step_title: 'title', task: 'title', details: 'description', what_to_do: 'description', material: 'materials', hours: 'planned_hours', hours_planned: 'planned_hours' },
+  parts: { part: 'name', part_name: 'name', item: 'name', qty: 'quantity', count: 'quantity', pcs: 'quantity', pieces: 'quantity', how_many: 'quantity', alias: 'aliases', also_called: 'aliases', other_names: 'aliases', materials: 'material', timber: 'material', wood: 'material', thickness_in_mm: 'thickness_mm' },
+}
+
+/** The column that each heading means in a table of this kind, or its own name when it means none. The column's own name goes before what stands for it. */
+export function columnsOf(headings: string[], kind: TableKind): string[] {
+  const names = headings.map(columnName)
+  const taken = new Set(names)
+  return names.map((name) => {
+    const meant = ALIASES[kind][name]
+    if (!meant || taken.has(meant) || KNOWN[kind].includes(name)) return name
+    taken.add(meant)
+    return meant
+  })
+}
+
+/** The headings, as written, that mean something in a table of this kind. */
+export function knownHeadings(headings: string[], kind: TableKind): string[] {
+  const columns = columnsOf(headings, kind)
+  return headings.filter((_, i) => KNOWN[kind].includes(columns[i]!))
+}
+
+const countKind = (headings: string[], kind: TableKind) => knownHeadings(headings, kind).length
+/** Headings that mean something in either kind of table; one that does in both counts twice. */
+export const countColumns = (headings: string[]) => countKind(headings, 'steps') + countKind(headings, 'parts')
 
 /** What a table holds, judged by its headings; undefined when they say nothing. */
-export function kindOfTable(headings: string[]): 'steps' | 'parts' | undefined {
-  const steps = countStepColumns(headings)
-  const parts = countPartColumns(headings)
+export function kindOfTable(headings: string[]): TableKind | undefined {
+  const [steps, parts] = [countKind(headings, 'steps'), countKind(headings, 'parts')]
   if (!steps && !parts) return undefined
   return parts > steps ? 'parts' : 'steps'
 }

@@ -34,7 +34,7 @@ export function readParts(source: Uint8Array | string): PartsReading {
 
 export function readPartsTable(table: Table): PartsReading {
   const { headings: _headings, rows: _rows, ...info } = table
-  const { rows, problems, unknownColumns } = nameColumns(table, PART_COLUMNS, ['name'])
+  const { rows, problems, unknownColumns } = nameColumns(table, 'parts', PART_COLUMNS, ['name'])
   const parts: PartRow[] = []
   const rowOfName = new Map<string, number>()
   for (const row of rows) {

@@ -37,7 +37,7 @@ export function readPlan(source: Uint8Array | string): PlanReading {
 
 export function readPlanTable(table: Table): PlanReading {
   const { headings: _headings, rows: _rows, ...info } = table
-  const { rows, problems, unknownColumns } = nameColumns(table, STEP_COLUMNS, ['number', 'title'])
+  const { rows, problems, unknownColumns } = nameColumns(table, 'steps', STEP_COLUMNS, ['number', 'title'])
   const steps: StepRow[] = []
   const rowOfNumber = new Map<number, number>()
   for (const row of rows) {

@@ -17,6 +17,11 @@ describe('a parts file', () => {
     expect(reading.parts.map(part => [part.name, part.thicknessMm, part.quantity])).toEqual([['fin', 6.5, 2], ['skeg', 6.35, null], ['keel', 19, 1]])
   })
 
+  it('takes common headings for its own', () => {
+    const reading = readParts('Part,Qty,Wood\nfin,2,ply')
+    expect(reading).toMatchObject({ problems: [], unknownColumns: [], parts: [{ name: 'fin', quantity: 2, material: 'ply' }] })
+  })
+
   it('drops empty aliases and ones that are there already', () => {
     expect(readParts('name,aliases\ntransom,"back end; ;Back  End;stern"').parts[0]!.aliases).toEqual(['back end', 'stern'])
   })
