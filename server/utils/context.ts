@@ -1,5 +1,5 @@
 import type { Storage } from '#server/adapters/storage'
-import { createS3Storage } from '#server/adapters/s3Storage'
+import { openStorage } from '#server/adapters/openStorage'
 import { type Environment, readEnvironment } from '#server/config/environment'
 import { createLimits, type Limits } from '#server/services/limits'
 import { createLiveListener, type LiveListener } from '#server/services/live'
@@ -25,8 +25,7 @@ export function pool(): DatabaseHandle {
 
 /** The site's object storage. */
 export function store(): Storage {
-  const { S3_ENDPOINT, S3_PUBLIC_ENDPOINT, S3_REGION, S3_BUCKET, S3_ACCESS_KEY_ID, S3_SECRET_ACCESS_KEY } = settings()
-  return storage ??= createS3Storage({ endpoint: S3_ENDPOINT, publicEndpoint: S3_PUBLIC_ENDPOINT, region: S3_REGION, bucket: S3_BUCKET, accessKeyId: S3_ACCESS_KEY_ID, secretAccessKey: S3_SECRET_ACCESS_KEY })
+  return storage ??= openStorage(settings())
 }
 
 let limiter: Limits | undefined

@@ -51,6 +51,9 @@ export async function measureUpload(clipPath: string): Promise<Figure[]> {
   }
 }
 
+// As in server/adapters/s3Storage.ts: the version is pinned.
+process.env.AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED ??= 'true'
+
 /** Seconds that one client takes to PUT the file to the product's storage in one request. */
 async function plainPut(dataDir: string, path: string, size: number): Promise<number> {
   const secrets = JSON.parse(readFileSync(join(dataDir, 'secrets.json'), 'utf8')) as { storageKeyId: string, storageSecret: string, ports: { storage: number } }

@@ -1,10 +1,5 @@
-import { createS3Storage } from '#server/adapters/s3Storage'
+import { openStorage } from '#server/adapters/openStorage'
 import type { Environment } from '#server/config/environment'
-
-/** The storage a process uses, from its settings. */
-export function openStorage(settings: Environment) {
-  return createS3Storage({ endpoint: settings.S3_ENDPOINT, publicEndpoint: settings.S3_PUBLIC_ENDPOINT, region: settings.S3_REGION, bucket: settings.S3_BUCKET, accessKeyId: settings.S3_ACCESS_KEY_ID, secretAccessKey: settings.S3_SECRET_ACCESS_KEY })
-}
 
 /** Makes the bucket and lets our pages' origin reach it. */
 export async function prepareStorage(settings: Environment): Promise<void> {

@@ -1,5 +1,5 @@
 import { tmpdir } from 'node:os'
-import { createS3Storage } from '#server/adapters/s3Storage'
+import { openStorage } from '#server/adapters/openStorage'
 import { EnvironmentError, readEnvironment } from '#server/config/environment'
 import { openDatabase } from '#server/database/client'
 import { Originals } from './originals'
@@ -31,9 +31,7 @@ const log = (line: string) => console.error(`[worker ${process.pid}] ${line}`)
 const handle = openDatabase(env.DATABASE_URL, { max: env.WORKER_CONCURRENCY * 2 + SPARE_CONNECTIONS, onIdleError: error => log(`A connection was lost: ${error.message}`) })
 // A connection that breaks while the queue uses it would otherwise end the process.
 handle.pool.on('connect', client => void client.on('error', () => {}))
-const storage = createS3Storage({
-  endpoint: env.S3_ENDPOINT, publicEndpoint: env.S3_PUBLIC_ENDPOINT, region: env.S3_REGION, bucket: env.S3_BUCKET, accessKeyId: env.S3_ACCESS_KEY_ID, secretAccessKey: env.S3_SECRET_ACCESS_KEY,
-})
+const storage = openStorage(env)
 const originals = await Originals.open(storage, process.env.WORKER_TEMP_DIR || tmpdir())
 const worker = await startMediaWorker({ database: handle.database, storage, originals }, handle, { url: env.DATABASE_URL, concurrency: env.WORKER_CONCURRENCY, log })
 
