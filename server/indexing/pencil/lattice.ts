@@ -20,8 +20,10 @@ export interface Lattice {
   allowed(i: number, j: number): boolean
   /** When a stretch is fixed: its only state; else null. */
   only(i: number, j: number): { step: number | null, kind: number } | null
-  /** Adds scores for every step, of a chapter from node i to j, into out (S). */
-  steps(i: number, j: number, out: Float64Array): void
+  /** Whether a step comes into question for a chapter from node i to j at all. */
+  alive(i: number, j: number, s: number): boolean
+  /** Scores of the first `count` steps of a list, for a chapter from node i to j, into out (by step). */
+  steps(i: number, j: number, list: Int32Array, count: number, out: Float64Array): void
   /** The same for every kind, including length (KINDS). */
   kinds(i: number, j: number, out: Float64Array): void
   /** How well step and operation go together, at length `seconds` of the chapter: S × W, two tables. */
@@ -35,20 +37,16 @@ export interface Lattice {
   seam(i: number): boolean
   /** From step m (0 = none yet) to step s: (S+1) × S. The diagonal is taking up again after a chat. */
   move: Float64Array
-  /** From operation to operation on the same step: W × W, -Infinity on the diagonal. */
+  /** From operation to operation on the same step: W × W; the diagonal is going on with the same in a new stretch. */
   change: Float64Array
   /** First operation on another step: W. */
   begins: Float64Array
   /** To the stepless kinds (3), and from one of them to another. */
   toStepless: Float64Array
   again: number
-  /** Kinds that may be used at all without a step; the fixed ones are always. */
 }
 
 const NONE = -Infinity
-
-/** For every node, the best (or summed) score of all ways to it, by state, and of starting a chapter there. */
-interface Pass { at: Float64Array[], entering: Float64Array[] }
 
 function states(lattice: Lattice): number { return (lattice.S + 1) * KINDS }
 
@@ -67,34 +65,81 @@ function logSumOf(values: Float64Array, from: number, count: number, stride: num
   return max + Math.log(sum)
 }
 
-/** The score of one chapter in every state, into out; NONE where it may not be. */
+/** The scores of one chapter after another, in buffers that are used again. */
 export class Chapters {
-  private readonly stepScores: Float64Array
-  private readonly kindScores = new Float64Array(KINDS)
-  constructor(private readonly lattice: Lattice) { this.stepScores = new Float64Array(lattice.S) }
+  /** Steps that come into question for the chapter last weighed, and how many. */
+  readonly alive: Int32Array
+  count = 0
+  readonly steps: Float64Array
+  readonly kinds = new Float64Array(KINDS)
+  /** Operation scores of step s stand at s × W. */
+  long = 0
+  only: { step: number | null, kind: number } | null = null
 
-  /** Calls `each(m, kind, score)` for all states that a chapter from i to j may have. m is 1-based for work; stepless kinds go with every m and are called with m = -1. */
-  score(i: number, j: number, work: (s: number, kind: number, score: number) => void, stepless: (kind: number, score: number) => void): void {
-    const { lattice, stepScores, kindScores } = this
-    const { S } = lattice
-    const only = lattice.only(i, j)
-    stepScores.fill(0)
-    kindScores.fill(0)
-    lattice.steps(i, j, stepScores)
-    lattice.kinds(i, j, kindScores)
-    if (only) {
-      if (only.step === null) stepless(only.kind, kindScores[only.kind]!)
-      else work(only.step, only.kind, stepScores[only.step]! + kindScores[only.kind]!)
-      return
+  constructor(private readonly lattice: Lattice) {
+    this.steps = new Float64Array(lattice.S)
+    this.alive = new Int32Array(lattice.S)
+  }
+
+  weigh(i: number, j: number): void {
+    const { lattice } = this
+    lattice.kinds(i, j, this.kinds)
+    this.only = lattice.only(i, j)
+    this.count = 0
+    if (this.only) {
+      if (this.only.step !== null) this.alive[this.count++] = this.only.step
     }
-    const long = lattice.long(i, j)
-    for (let s = 0; s < S; s++) {
-      const base = stepScores[s]!
-      for (let kind = 0; kind < W; kind++) work(s, kind, base + kindScores[kind]! + lattice.fit[s * W + kind]! + lattice.fitRate[s * W + kind]! * long)
-    }
-    for (let kind = W; kind < KINDS; kind++) stepless(kind, kindScores[kind]!)
+    else for (let s = 0; s < lattice.S; s++) if (lattice.alive(i, j, s)) this.alive[this.count++] = s
+    lattice.steps(i, j, this.alive, this.count, this.steps)
+    this.long = lattice.long(i, j)
+  }
+
+  /** Score of the chapter last weighed as operation `kind` on step s. */
+  work(s: number, kind: number): number {
+    if (this.only && this.only.kind !== kind) return NONE
+    const at = s * W + kind
+    return this.steps[s]! + this.kinds[kind]! + this.lattice.fit[at]! + this.lattice.fitRate[at]! * this.long
+  }
+
+  /** Score of it as a kind without a step. */
+  stepless(kind: number): number {
+    if (this.only && (this.only.step !== null || this.only.kind !== kind)) return NONE
+    return this.kinds[kind]!
   }
 }
+
+/** Log of a sum that is added to one term at a time, for every state at once. */
+class Sums {
+  readonly max: Float64Array
+  readonly sum: Float64Array
+  constructor(size: number) {
+    this.max = new Float64Array(size).fill(NONE)
+    this.sum = new Float64Array(size)
+  }
+
+  put(at: number, value: number): void {
+    const top = this.max[at]!
+    if (value > top) {
+      this.sum[at] = top === NONE ? 1 : top - value > -30 ? this.sum[at]! * Math.exp(top - value) + 1 : 1
+      this.max[at] = value
+    }
+    else if (value - top > -30) this.sum[at]! += Math.exp(value - top)
+  }
+
+  into(out: Float64Array): void {
+    let best = NONE
+    for (let at = 0; at < out.length; at++) {
+      const top = this.max[at]!
+      const value = top === NONE ? NONE : top + Math.log(this.sum[at]!)
+      out[at] = value
+      if (value > best) best = value
+    }
+    // What is so far behind the best never counts again.
+    for (let at = 0; at < out.length; at++) if (out[at]! < best - BEHIND) out[at] = NONE
+  }
+}
+
+const BEHIND = 24
 
 /** Scores of entering each state at node i, from the scores of having ended there; `sum` or best. */
 function enter(lattice: Lattice, i: number, ended: Float64Array, out: Float64Array): void {
@@ -112,10 +157,12 @@ function enter(lattice: Lattice, i: number, ended: Float64Array, out: Float64Arr
     all[m] = logSum(worked[m]!, chatted[m]!)
   }
   const buffer = new Float64Array(S + 1)
+  const live: number[] = []
+  for (let m = 0; m <= S; m++) if (all[m]! !== NONE) live.push(m)
   for (let s = 0; s < S; s++) {
     const m = s + 1
-    for (let from = 0; from <= S; from++) buffer[from] = from === m ? NONE : all[from]! + move[from * S + s]!
-    const other = logSumOf(buffer, 0, S + 1, 1)
+    for (let n = 0; n < live.length; n++) buffer[n] = live[n] === m ? NONE : all[live[n]!]! + move[live[n]! * S + s]!
+    const other = logSumOf(buffer, 0, live.length, 1)
     const resumed = chatted[m]! + move[m * S + s]!
     const any = worked[m]! !== NONE
     for (let kind = 0; kind < W; kind++) {
@@ -124,8 +171,7 @@ function enter(lattice: Lattice, i: number, ended: Float64Array, out: Float64Arr
         for (let before = 0; before < W; before++) {
           const e = ended[m * KINDS + before]!
           if (e === NONE) continue
-          if (before !== kind) score = logSum(score, e + change[before * W + kind]!)
-          else if (seam) score = logSum(score, e - turn)
+          score = logSum(score, before === kind && seam ? e - turn : e + change[before * W + kind]!)
         }
       }
       out[m * KINDS + kind] = score + turn
@@ -133,6 +179,7 @@ function enter(lattice: Lattice, i: number, ended: Float64Array, out: Float64Arr
   }
   for (let m = 0; m <= S; m++) {
     for (let kind = W; kind < KINDS; kind++) {
+      if (all[m] === NONE) continue
       let score = worked[m]! + toStepless[kind - W]!
       for (let before = W; before < KINDS; before++) {
         const e = ended[m * KINDS + before]!
@@ -160,24 +207,22 @@ export function forward(lattice: Lattice): { logZ: number, ended: Float64Array[]
   const chapters = new Chapters(lattice)
   begin(lattice, entered[0]!)
   for (let j = 1; j < nodes.length; j++) {
-    const out = ended[j]!
-    // Log-sum with a running maximum: first the largest, then the sum.
-    const max = new Float64Array(N).fill(NONE)
-    const sum = new Float64Array(N)
-    const put = (at: number, value: number) => {
-      if (value === NONE) return
-      const top = max[at]!
-      if (value > top) { sum[at] = top === NONE ? 1 : sum[at]! * Math.exp(top - value) + 1; max[at] = value }
-      else if (value > top - 30) sum[at]! += Math.exp(value - top)
-    }
+    const sums = new Sums(N)
     for (let i = lattice.earliest(j); i < j; i++) {
       if (!lattice.allowed(i, j)) continue
       const from = entered[i]!
-      chapters.score(i, j,
-        (s, kind, score) => { const at = (s + 1) * KINDS + kind; put(at, from[at]! + score) },
-        (kind, score) => { for (let m = 0; m <= S; m++) { const at = m * KINDS + kind; put(at, from[at]! + score) } })
+      chapters.weigh(i, j)
+      for (let n = 0; n < chapters.count; n++) {
+        const s = chapters.alive[n]!
+        for (let kind = 0, at = (s + 1) * KINDS; kind < W; kind++, at++) if (from[at]! !== NONE) sums.put(at, from[at]! + chapters.work(s, kind))
+      }
+      for (let kind = W; kind < KINDS; kind++) {
+        const score = chapters.stepless(kind)
+        if (score !== NONE) for (let m = 0, at = kind; m <= S; m++, at += KINDS) if (from[at]! !== NONE) sums.put(at, from[at]! + score)
+      }
     }
-    for (let at = 0; at < N; at++) out[at] = max[at] === NONE ? NONE : max[at]! + Math.log(sum[at]!)
+    const out = ended[j]!
+    sums.into(out)
     if (j < nodes.length - 1) enter(lattice, j, out, entered[j]!)
   }
   return { logZ: logSumOf(ended.at(-1)!, 0, N, 1), ended, entered }
@@ -204,17 +249,18 @@ function leave(lattice: Lattice, i: number, following: Float64Array, out: Float6
     stepless[m] = logSumOf(three, 0, 3, 1)
   }
   const others = new Float64Array(S)
+  const live: number[] = []
+  for (let s = 0; s < S; s++) if (begun[s]! !== NONE) live.push(s)
   for (let m = 0; m <= S; m++) {
-    for (let s = 0; s < S; s++) others[s] = s + 1 === m ? NONE : begun[s]! + move[m * S + s]!
-    const away = logSumOf(others, 0, S, 1)
+    for (let n = 0; n < live.length; n++) others[n] = live[n]! + 1 === m ? NONE : begun[live[n]!]! + move[m * S + live[n]!]!
+    const away = logSumOf(others, 0, live.length, 1)
     if (m) {
       for (let kind = 0; kind < W; kind++) {
         let score = logSum(away, stepless[m]!)
         for (let next = 0; next < W; next++) {
           const f = following[m * KINDS + next]!
           if (f === NONE) continue
-          if (next !== kind) score = logSum(score, f + change[kind * W + next]!)
-          else if (seam) score = logSum(score, f - turn)
+          score = logSum(score, next === kind && seam ? f - turn : f + change[kind * W + next]!)
         }
         out[m * KINDS + kind] = score + turn
       }
@@ -242,23 +288,22 @@ export function backward(lattice: Lattice): { afterEnd: Float64Array[], afterEnt
   const latest: number[] = nodes.map(() => 0)
   for (let j = 1; j <= last; j++) for (let i = lattice.earliest(j); i < j; i++) latest[i] = Math.max(latest[i]!, j)
   for (let i = last - 1; i >= 0; i--) {
-    const max = new Float64Array(N).fill(NONE)
-    const sum = new Float64Array(N)
-    const put = (at: number, value: number) => {
-      if (value === NONE) return
-      const top = max[at]!
-      if (value > top) { sum[at] = top === NONE ? 1 : sum[at]! * Math.exp(top - value) + 1; max[at] = value }
-      else if (value > top - 30) sum[at]! += Math.exp(value - top)
-    }
+    const sums = new Sums(N)
     for (let j = i + 1; j <= latest[i]!; j++) {
       if (lattice.earliest(j) > i || !lattice.allowed(i, j)) continue
       const after = afterEnd[j]!
-      chapters.score(i, j,
-        (s, kind, score) => { const at = (s + 1) * KINDS + kind; put(at, after[at]! + score) },
-        (kind, score) => { for (let m = 0; m <= S; m++) { const at = m * KINDS + kind; put(at, after[at]! + score) } })
+      chapters.weigh(i, j)
+      for (let n = 0; n < chapters.count; n++) {
+        const s = chapters.alive[n]!
+        for (let kind = 0, at = (s + 1) * KINDS; kind < W; kind++, at++) if (after[at]! !== NONE) sums.put(at, after[at]! + chapters.work(s, kind))
+      }
+      for (let kind = W; kind < KINDS; kind++) {
+        const score = chapters.stepless(kind)
+        if (score !== NONE) for (let m = 0, at = kind; m <= S; m++, at += KINDS) if (after[at]! !== NONE) sums.put(at, after[at]! + score)
+      }
     }
     const out = afterEnter[i]!
-    for (let at = 0; at < N; at++) out[at] = max[at] === NONE ? NONE : max[at]! + Math.log(sum[at]!)
+    sums.into(out)
     if (i > 0) leave(lattice, i, out, afterEnd[i]!)
   }
   return { afterEnd, afterEnter }

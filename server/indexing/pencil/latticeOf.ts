@@ -16,6 +16,8 @@ export const OPENING_CUES = 3
 /** Unit of the rates that go with a chapter's length, s, and how far they count. */
 export const LONG_UNIT_S = 20
 export const LONG_MOST_S = 90
+/** Score of parting one stretch of the same work in two: so low that only one that is too long to be weighed as one is. */
+const GO_ON = -9
 
 /** The features of moving from one step to another, by name, given to `each`. */
 export function moveFeatures(material: Material, from: number, to: number, each: (name: string, value: number) => void): void {
@@ -54,6 +56,12 @@ function running(n: number, width: number, value: (cue: number, at: number) => n
   return sums
 }
 
+/** What the first words of a chapter say of its kind, by name. */
+export function openingFeatures(material: Material, cue: number, kind: number, each: (name: string, value: number) => void): void {
+  const column = kind < W ? kind : kind === W ? CHAT : kind === W + 1 ? PLAN_TALK : CLEAN_UP
+  each('opening.heard', material.kinds[cue * C + column]!)
+}
+
 /** Per-second and per-word score of a kind in one cue, by name. */
 export function kindFeatures(material: Material, cue: number, kind: number, each: (name: string, value: number) => void): void {
   const { kinds, seconds, shop, start, end } = material
@@ -83,6 +91,30 @@ export function kindFeatures(material: Material, cue: number, kind: number, each
   }
 }
 
+/** How many steps are weighed at a place, when the plan has more; and how far about it evidence is gathered, cues. */
+const ALIVE = 14
+const ABOUT = [4, 10, 24]
+
+/** Cue × step: 1 where a step is among the likeliest thereabouts. Keeps long plans and long sessions quick. */
+function aliveSteps(material: Material, sums: Float64Array): Uint8Array {
+  const { S, speech } = material
+  const n = speech.cues.length
+  const alive = new Uint8Array(n * S)
+  if (S <= ALIVE) return alive.fill(1)
+  const scores = new Float64Array(S)
+  const order = Array.from({ length: S }, (_, s) => s)
+  for (let cue = 0; cue < n; cue++) {
+    for (const about of ABOUT) {
+      const from = Math.max(0, cue - about) * S
+      const to = Math.min(n, cue + about + 1) * S
+      for (let s = 0; s < S; s++) scores[s] = sums[to + s]! - sums[from + s]!
+      order.sort((a, b) => scores[b]! - scores[a]!)
+      for (let at = 0; at < ALIVE - 4; at++) alive[cue * S + order[at]!] = 1
+    }
+  }
+  return alive
+}
+
 /** The scores of a session under given weights. `allow` says which steps may be used at all. */
 export function latticeOf(material: Material, weights: Weights, bonus?: Float64Array): Lattice {
   const { S, speech, nodes, fixed } = material
@@ -100,6 +132,13 @@ export function latticeOf(material: Material, weights: Weights, bonus?: Float64A
     kindFeatures(material, cue, kind, (name, value) => { sum += (weights[name] ?? 0) * value })
     return sum
   })
+  const openKinds = running(n, KINDS, (cue, kind) => {
+    let sum = 0
+    openingFeatures(material, cue, kind, (name, value) => { sum += (weights[name] ?? 0) * value })
+    return sum
+  })
+  const alive = aliveSteps(material, stepSums)
+  const aliveSums = running(n, S, (cue, s) => alive[cue * S + s]!)
   const timeSums = running(n, 1, cue => material.seconds[cue]!)
   const fit = new Float64Array(S * W)
   const fitRate = new Float64Array(S * W)
@@ -118,7 +157,7 @@ export function latticeOf(material: Material, weights: Weights, bonus?: Float64A
   const move = new Float64Array((S + 1) * S)
   for (let from = 0; from <= S; from++) for (let to = 0; to < S; to++) move[from * S + to] = scoreOf(each => moveFeatures(material, from, to, each))
   const change = new Float64Array(W * W)
-  for (let from = 0; from < W; from++) for (let to = 0; to < W; to++) change[from * W + to] = from === to ? -Infinity : scoreOf(each => changeFeatures(from, to, each))
+  for (let from = 0; from < W; from++) for (let to = 0; to < W; to++) change[from * W + to] = from === to ? GO_ON : scoreOf(each => changeFeatures(from, to, each))
   const turnWeights = TURN_FEATURES.map(name => weights[`turn.${name}`] ?? 0)
   const turnOf = nodes.map((cue) => {
     if (cue >= n) return 0
@@ -152,11 +191,15 @@ export function latticeOf(material: Material, weights: Weights, bonus?: Float64A
       return from === undefined || nodes[i] === from
     },
     only: (i, j) => fixedAt.size ? fixedAt.get(`${nodes[i]!} ${nodes[j]!}`) ?? null : null,
-    steps: (i, j, out) => {
+    alive: (i, j, s) => aliveSums[nodes[j]! * S + s]! - aliveSums[nodes[i]! * S + s]! >= 0.3 * (nodes[j]! - nodes[i]!),
+    steps: (i, j, list, count, out) => {
       const a = nodes[i]! * S
       const b = nodes[j]! * S
       const o = Math.min(nodes[j]!, nodes[i]! + OPENING_CUES) * S
-      for (let s = 0; s < S; s++) out[s] = stepSums[b + s]! - stepSums[a + s]! + openSums[o + s]! - openSums[a + s]!
+      for (let at = 0; at < count; at++) {
+        const s = list[at]!
+        out[s] = stepSums[b + s]! - stepSums[a + s]! + openSums[o + s]! - openSums[a + s]!
+      }
     },
     kinds: (i, j, out) => {
       const a = nodes[i]! * KINDS
@@ -164,7 +207,8 @@ export function latticeOf(material: Material, weights: Weights, bonus?: Float64A
       const time = seconds(i, j)
       const work = scoreOf(each => lengthFeatures(time, 'length', each))
       const stepless = scoreOf(each => lengthFeatures(time, 'stepless', each))
-      for (let kind = 0; kind < KINDS; kind++) out[kind] = kindSums[b + kind]! - kindSums[a + kind]! + (kind < W ? work : stepless)
+      const o = Math.min(nodes[j]!, nodes[i]! + OPENING_CUES) * KINDS
+      for (let kind = 0; kind < KINDS; kind++) out[kind] = kindSums[b + kind]! - kindSums[a + kind]! + openKinds[o + kind]! - openKinds[a + kind]! + (kind < W ? work : stepless)
     },
     fit,
     fitRate,

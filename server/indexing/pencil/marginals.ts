@@ -10,11 +10,11 @@ export interface Marginals {
   turns: Float64Array
 }
 
-const LEAST = -14
+const LEAST = -12
 
 export function marginalsOf(lattice: Lattice, cues: number): Marginals {
   const { S, nodes } = lattice
-  const { logZ, ended, entered } = forward(lattice)
+  const { logZ, entered } = forward(lattice)
   const { afterEnd, afterEnter } = backward(lattice)
   const width = S + 1
   const steps = new Float64Array((cues + 1) * width)
@@ -27,26 +27,29 @@ export function marginalsOf(lattice: Lattice, cues: number): Marginals {
       if (!lattice.allowed(i, j)) continue
       const a = entered[i]!
       const from = nodes[i]!
-      chapters.score(i, j, (s, kind, score) => {
-        const at = (s + 1) * KINDS + kind
-        const log = a[at]! + score + b[at]! - logZ
-        if (!(log > LEAST)) return
-        const p = Math.exp(log)
+      chapters.weigh(i, j)
+      const put = (s: number, kind: number, p: number) => {
         steps[from * width + s]! += p
         steps[to * width + s]! -= p
         kinds[from * KINDS + kind]! += p
         kinds[to * KINDS + kind]! -= p
-      }, (kind, score) => {
-        let p = 0
-        for (let m = 0; m <= S; m++) {
-          const log = a[m * KINDS + kind]! + score + b[m * KINDS + kind]! - logZ
-          if (log > LEAST) p += Math.exp(log)
+      }
+      for (let n = 0; n < chapters.count; n++) {
+        const s = chapters.alive[n]!
+        for (let kind = 0, at = (s + 1) * KINDS; kind < W; kind++, at++) {
+          const outer = a[at]! + b[at]! - logZ
+          if (outer === -Infinity) continue
+          const log = outer + chapters.work(s, kind)
+          if (log > LEAST) put(s, kind, Math.exp(log))
         }
-        steps[from * width + S]! += p
-        steps[to * width + S]! -= p
-        kinds[from * KINDS + kind]! += p
-        kinds[to * KINDS + kind]! -= p
-      })
+      }
+      for (let kind = W; kind < KINDS; kind++) {
+        const score = chapters.stepless(kind) - logZ
+        for (let m = 0, at = kind; m <= S; m++, at += KINDS) {
+          const log = a[at]! + score + b[at]!
+          if (log > LEAST) put(S, kind, Math.exp(log))
+        }
+      }
     }
   }
   for (let cue = 1; cue <= cues; cue++) {

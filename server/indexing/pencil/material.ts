@@ -1,5 +1,5 @@
 import { hearKinds, HEARD_COLUMNS } from './kindEvidence'
-import { type Speech } from './speech'
+import type { Speech } from './speech'
 import { hearSteps, STEP_FEATURES, type StepIndex } from './stepEvidence'
 import { hearTurns, TURN_FEATURES } from './turns'
 import { type Learned, STEPLESS_KINDS, WORK_KINDS } from './types'
@@ -38,7 +38,7 @@ export interface Material {
 }
 
 /** Longest chapter that is weighed as one, s; a longer one is still found when it is all there is. */
-const LONGEST_S = 300
+const LONGEST_S = 240
 
 export function gather(speech: Speech, index: StepIndex, learned: readonly Learned[] = [], fixed: FixedStretch[] = []): Material {
   const S = index.steps.length

@@ -10,7 +10,7 @@ import { WORK_KINDS } from './types'
 export const WEIGHT_NAMES = [
   ...STEP_FEATURES.map(name => `step.${name}`),
   // The first words of a chapter say what it is about.
-  'opening.words', 'opening.topic',
+  'opening.words', 'opening.topic', 'opening.heard',
   ...WORK_KINDS.map(kind => `rate.${kind}`),
   'heard.work', 'heard.planTalk', 'heard.cleanUp', 'heard.chatInWork',
   'none.rate', 'none.chat', 'none.shop', 'none.start', 'none.end', 'none.heard',

@@ -3,7 +3,7 @@ import { hearAdhesives } from '../facts/hearAdhesives'
 import { hearFacts } from '../facts/hearFacts'
 import { hearSpeaker } from '../facts/speaker'
 import type { SpokenFact } from '../facts/types'
-import { confidenceOf } from './calibration'
+import { confidenceOf, type Curve } from './calibration'
 import { evidenceOf, partBook, partsIn } from './evidence'
 import { KINDS, W } from './lattice'
 import { latticeOf } from './latticeOf'
@@ -13,7 +13,8 @@ import { listen, type Speech } from './speech'
 import { indexSteps } from './stepEvidence'
 import { hearTold } from './told'
 import { type FixedChapter, type Learned, type PencilledChapter, type PlanPart, type PlanStep, type SpokenClip, STEPLESS_KINDS, WORK_KINDS } from './types'
-import { WEIGHTS } from './weights'
+import type { Weights } from './model'
+import { FITTED } from './weights'
 
 export interface PencilInput {
   steps: PlanStep[]
@@ -29,6 +30,10 @@ export interface PencilInput {
   units?: 'inch' | 'mm' | null
 }
 
+/** The numbers of the model, for when nothing is known of the day and for when its steps are ticked. */
+export interface FittedModel { weights: Weights, curve: Curve }
+export interface Fitted { open: FittedModel, ticked: FittedModel }
+
 export interface ToldNotShown { clip: number, atMs: number, step: number | null, words: string }
 export interface PencilledFact extends SpokenFact { clip: number, step: number | null }
 export interface Pencilled { chapters: PencilledChapter[], toldNotShown: ToldNotShown[], facts: PencilledFact[] }
@@ -38,7 +43,7 @@ export interface Pencilled { chapters: PencilledChapter[], toldNotShown: ToldNot
  * without gaps, in order of clip and time, around those that are fixed. Deterministic; no I/O; a session of
  * twelve minutes and a plan of thirty steps take well under 200 ms.
  */
-export function pencilChapters(input: PencilInput): PencilledChapter[] {
+export function pencilChapters(input: PencilInput, fitted: Fitted = FITTED): PencilledChapter[] {
   const speech = listen(input.clips)
   const ticked = new Set(input.ticked ?? [])
   for (const { step } of input.fixed ?? []) if (step !== null && ticked.size) ticked.add(step)
@@ -47,11 +52,12 @@ export function pencilChapters(input: PencilInput): PencilledChapter[] {
   if (!speech.cues.length) return silentChapters(input)
   const fixed = fixedStretches(speech, steps, input.fixed ?? [])
   const material = gather(speech, indexSteps(steps, input.parts), input.learned ?? [], fixed)
-  const lattice = latticeOf(material, known.length ? WEIGHTS.ticked : WEIGHTS.open)
+  const { weights, curve } = known.length ? fitted.ticked : fitted.open
+  const lattice = latticeOf(material, weights)
   const marginals = marginalsOf(lattice, speech.cues.length)
   const decoded = decode(lattice, marginals, material.seconds, DECODING)
   const book = partBook(input.parts)
-  const proposed = decoded.map(chapter => describe(chapter, material, marginals, steps, input, book))
+  const proposed = decoded.map(chapter => describe(chapter, material, marginals, steps, input, book, curve))
   return layOut(proposed, input)
 }
 
@@ -82,7 +88,7 @@ function fixedStretches(speech: Speech, steps: PlanStep[], fixed: readonly Fixed
 
 type Proposal = Omit<PencilledChapter, 'fixed'>
 
-function describe(chapter: Decoded, material: Material, marginals: Marginals, steps: PlanStep[], input: PencilInput, book: ReturnType<typeof partBook>): Proposal {
+function describe(chapter: Decoded, material: Material, marginals: Marginals, steps: PlanStep[], input: PencilInput, book: ReturnType<typeof partBook>, curve: Curve): Proposal {
   const { speech, seconds, S } = material
   const step = chapter.step === null ? null : steps[chapter.step]!
   const operation: Operation = chapter.kind < W ? WORK_KINDS[chapter.kind]! : STEPLESS_KINDS[chapter.kind - W]!
@@ -98,7 +104,7 @@ function describe(chapter: Decoded, material: Material, marginals: Marginals, st
       operationShare.set(name, (operationShare.get(name) ?? 0) + marginals.kinds[cue * KINDS + kind]! * seconds[cue]!)
     }
   }
-  const share = (value: number) => confidenceOf(value / Math.max(time, 1e-9))
+  const share = (value: number) => confidenceOf(value / Math.max(time, 1e-9), curve)
   const others = [...stepShare].map((value, s) => ({ step: s < S ? steps[s]!.number : null, confidence: share(value) })).filter(other => other.step !== (step?.number ?? null)).sort((a, b) => b.confidence - a.confidence).slice(0, 3)
   const otherOperations = [...operationShare].map(([name, value]) => ({ operation: name, confidence: share(value) })).filter(other => other.operation !== operation).sort((a, b) => b.confidence - a.confidence).slice(0, 3)
   const cue = speech.cues[chapter.from]!
@@ -109,7 +115,7 @@ function describe(chapter: Decoded, material: Material, marginals: Marginals, st
     step: step?.number ?? null,
     operation,
     parts: partsIn(speech, chapter.from, chapter.to, step, book),
-    confidence: confidenceOf(chapter.confidence),
+    confidence: confidenceOf(chapter.confidence, curve),
     evidence: evidenceOf(speech, chapter.from, chapter.to, step, operation, input.parts),
     otherSteps: others,
     otherOperations,
@@ -168,8 +174,8 @@ function silentChapters(input: PencilInput): PencilledChapter[] {
 }
 
 /** Chapters, facts and what was told but not shown, each with its step. */
-export function pencil(input: PencilInput): Pencilled {
-  const chapters = pencilChapters(input)
+export function pencil(input: PencilInput, fitted: Fitted = FITTED): Pencilled {
+  const chapters = pencilChapters(input, fitted)
   const at = (clip: number, ms: number) => chapters.find(chapter => chapter.clip === clip && ms >= chapter.startMs && ms < chapter.endMs)
   const speaker = hearSpeaker(input.clips.flatMap(clip => clip.cues.map(cue => cue.text)).join(' '), input.units ?? null)
   const facts = input.clips.flatMap((clip, clipAt) => [...hearFacts(clip, { speaker }), ...hearAdhesives(clip)]

@@ -1,5 +1,5 @@
 import { backward, Chapters, forward, KINDS, type Lattice, W } from '#server/indexing/pencil/lattice'
-import { changeFeatures, kindFeatures, latticeOf, lengthFeatures, LONG_MOST_S, LONG_UNIT_S, moveFeatures, OPENING_CUES } from '#server/indexing/pencil/latticeOf'
+import { changeFeatures, kindFeatures, latticeOf, lengthFeatures, LONG_MOST_S, LONG_UNIT_S, moveFeatures, OPENING_CUES, openingFeatures } from '#server/indexing/pencil/latticeOf'
 import type { Material } from '#server/indexing/pencil/material'
 import type { Weights } from '#server/indexing/pencil/model'
 import { STEP_FEATURES } from '#server/indexing/pencil/stepEvidence'
@@ -56,6 +56,7 @@ function chapterFeatures(material: Material, from: number, to: number, step: num
     if (step !== null) STEP_FEATURES.forEach((name, k) => each(`step.${name}`, material.steps[(cue * S + step) * STEP_FEATURES.length + k]!))
   }
   lengthFeatures(seconds, step === null ? 'stepless' : 'length', each)
+  for (let cue = from; cue < Math.min(to, from + OPENING_CUES); cue++) openingFeatures(material, cue, kind, each)
   if (step === null) return
   for (let cue = from; cue < Math.min(to, from + OPENING_CUES); cue++) {
     each('opening.words', material.openWords[cue * S + step]!)
@@ -99,19 +100,26 @@ export function expectedCounts(material: Material, weights: Weights, loss?: (lat
       const long = lattice.long(i, j)
       let work = 0
       let stepless = 0
+      const byKind = new Float64Array(KINDS)
       const mine = new Float64Array(S)
-      chapters.score(i, j, (s, kind, score) => {
-        const at = (s + 1) * KINDS + kind
-        const log = a[at]! + score + b[at]! - logZ
-        if (!(log > -16)) return
-        const p = Math.exp(log)
-        work += p
-        mine[s]! += p
-        kindOver[from * KINDS + kind]! += p
-        kindOver[to * KINDS + kind]! -= p
-        fit[s * W + kind]! += p
-        fitLong[s * W + kind]! += p * long
-      }, (kind, score) => {
+      chapters.weigh(i, j)
+      for (let n = 0; n < chapters.count; n++) {
+        const s = chapters.alive[n]!
+        for (let kind = 0, at = (s + 1) * KINDS; kind < W; kind++, at++) {
+          const log = a[at]! + chapters.work(s, kind) + b[at]! - logZ
+          if (!(log > -16)) continue
+          const p = Math.exp(log)
+          work += p
+          mine[s]! += p
+          byKind[kind]! += p
+          kindOver[from * KINDS + kind]! += p
+          kindOver[to * KINDS + kind]! -= p
+          fit[s * W + kind]! += p
+          fitLong[s * W + kind]! += p * long
+        }
+      }
+      for (let kind = W; kind < KINDS; kind++) {
+        const score = chapters.stepless(kind)
         let p = 0
         for (let m = 0; m <= S; m++) {
           const at = m * KINDS + kind
@@ -119,9 +127,10 @@ export function expectedCounts(material: Material, weights: Weights, loss?: (lat
           if (log > -16) p += Math.exp(log)
         }
         stepless += p
+        byKind[kind]! += p
         kindOver[from * KINDS + kind]! += p
         kindOver[to * KINDS + kind]! -= p
-      })
+      }
       if (work < 1e-7 && stepless < 1e-7) continue
       for (let s = 0; s < S; s++) {
         const p = mine[s]!
@@ -132,6 +141,9 @@ export function expectedCounts(material: Material, weights: Weights, loss?: (lat
           each('opening.words', p * material.openWords[cue * S + s]!)
           each('opening.topic', p * material.openTopic[cue * S + s]!)
         }
+      }
+      for (let cue = from; cue < Math.min(to, from + OPENING_CUES); cue++) {
+        for (let kind = 0; kind < KINDS; kind++) if (byKind[kind]! > 1e-7) openingFeatures(material, cue, kind, add(counts, byKind[kind]!))
       }
       let seconds = 0
       for (let cue = from; cue < to; cue++) seconds += material.seconds[cue]!

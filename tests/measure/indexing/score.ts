@@ -3,9 +3,15 @@ import type { Truth } from './load'
 
 export interface ProposedChapter { startMs: number, endMs: number, step: number | null, operation: Operation }
 export interface Tally {
-  onStep: number, onStepOk: number, onOperation: number, onOperationOk: number
-  noneRight: number, noneWrong: number, noneMissed: number
-  windows: number, windowsWrong: number
+  onStep: number
+  onStepOk: number
+  onOperation: number
+  onOperationOk: number
+  noneRight: number
+  noneWrong: number
+  noneMissed: number
+  windows: number
+  windowsWrong: number
 }
 
 const STEP_MS = 500
@@ -19,8 +25,14 @@ export function tallyChapters(truth: Truth, got: ProposedChapter[]): Tally {
   for (let ms = 0; ms < truth.durationMs; ms += STEP_MS) {
     const a = at(truth.chapters, ms)
     const b = at(got, ms)
-    if (a?.step != null) { tally.onStep++; if (b?.step === a.step) tally.onStepOk++ }
-    if (a && a.operation !== 'none') { tally.onOperation++; if (b?.operation === a.operation) tally.onOperationOk++ }
+    if (a?.step != null) {
+      tally.onStep++
+      if (b?.step === a.step) tally.onStepOk++
+    }
+    if (a && a.operation !== 'none') {
+      tally.onOperation++
+      if (b?.operation === a.operation) tally.onOperationOk++
+    }
     const none = a?.step == null
     const said = b?.step == null
     if (none && said) tally.noneRight++
@@ -44,7 +56,10 @@ export function windowDiffCounts(reference: number[], proposed: number[], k: num
   for (let i = 0; i + k < reference.length; i++) {
     let r = 0
     let p = 0
-    for (let j = i + 1; j <= i + k; j++) { r += reference[j]!; p += proposed[j]! }
+    for (let j = i + 1; j <= i + k; j++) {
+      r += reference[j]!
+      p += proposed[j]!
+    }
     if (r !== p) wrong++
     windows++
   }
