@@ -15,7 +15,7 @@ it('stops at as many as a sitemap may hold', () => {
 it.each([[0, 'PT0S'], [12_500, 'PT12.5S'], [90_000, 'PT1M30S'], [3_723_004, 'PT1H2M3.004S']])('writes %i ms as %s', (ms, text) => expect(isoDuration(ms)).toBe(text))
 
 it('describes clips with chapters as parts', () => {
-  const clip = { id: 'k', date: '2026-09-05', durationMs: 60_000, src: '/media/clips/k/video', width: 16, height: 9, poster: '/media/clips/k/poster', tracks: [] }
+  const clip = { id: 'k', date: '2026-09-05', durationMs: 60_000, src: '/media/clips/k/video', width: 16, height: 9, frameRate: null, poster: '/media/clips/k/poster', tracks: [] }
   const chapter = { id: 'c', clipId: 'k', startMs: 1500, endMs: 9000, operation: 'glue' as const, step: null, parts: ['bow transom'], note: '', picture: null }
   const [video] = videoData({ site: 'https://x.test', address: 'pram', title: 'Pram', description: '', clips: [clip, { ...clip, id: 'n', poster: null }], chapters: [chapter] })
   expect(video).toMatchObject({
