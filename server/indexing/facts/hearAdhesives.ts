@@ -5,7 +5,7 @@ const NOUN = String.raw`(?:e?poxy|a poxy|epoxies|resin|glue|adhesive|polyurethan
 const QUALITY = String.raw`(?:straight|neat|plain|unthickened|thickened|slow|fast|medium|ordinary|normal|regular|just|only|basically|good|some|a bit of|a little|yellow|white|brown|waterproof|exterior|carpenter'?s'?|wood|wood ?worker'?s|polyurethane|two[- ]part|one[- ]part|marine|clear|black|rubber|urea|laminating|gap[- ]filling|foaming|polysulphide|polysulfide|butyl|tropical|winter|summer|high[- ]strength)`
 const WITH = String.raw`(?:\s+(?:with|and|plus|thickened with)\s+(?:(?:a|some|the|bit|little|pinch|lot|of|bunch|fine|fluffy|white|high|low|density|colloidal|stirred|fumed|milled|chopped|cotton|wood|sanding|phenolic|glass)\s+)*(?:flour|silica|microfibres?|microfibers?|micro ?balloons|fibres?|fibers?|dust|filler|powder|flock|cotton|talc|microspheres|balloons|thickener))*`
 /** What names a substance as the one in hand: "this is epoxy", "it's just yellow carpenter's glue", "I'm using the slow epoxy". */
-const STATED = new RegExp(String.raw`\b(?:this is|stuff is|that is|that's|it's|it is|is just|these are|they're|using|use|used|they get|it gets|that gets|get|gets|goes in with|stick it with|stuck with|glued with|bonded with|go with|going with|i'm on|adhesive is|glue is|glue,? it's|bed it in|bedded in|bedding it in|bedded on|set in|stick it on with|stuck it on with|stuck it down with)\s+((?:(?:the|a|an|our|my|this)\s+)?(?:${QUALITY},?\s+)*${NOUN}${WITH})\b`, 'gi')
+const STATED = new RegExp(String.raw`\b(?:this is|stuff is|that is|that's|it's|it is|is just|these are|they're|using|use|used|\w+ed (?:it |them |that )?(?:up |down |in |together )?with|they get|it gets|that gets|get|gets|goes in with|stick it with|stuck with|glued with|bonded with|go with|going with|i'm on|adhesive is|glue is|glue,? it's|bed it in|bedded in|bedding it in|bedded on|set in|stick it on with|stuck it on with|stuck it down with)\s+((?:(?:the|a|an|our|my|this)\s+)?(?:${QUALITY},?\s+)*${NOUN}${WITH})\b`, 'gi')
 const NEGATED = /\b(?:not|no|old|isn't|never|without|instead of|rather than|don't|didn't)\b[^.,;]{0,14}$/i
 
 /**
@@ -33,7 +33,7 @@ export function hearAdhesives(clip: SpokenClip): SpokenFact[] {
       cue = start.cue
     }
     // "It's the glue day" names no glue; "it gets epoxy" may be any, "it gets unthickened epoxy" is a choice.
-    if (/^(?:glue|resin|adhesive)$/i.test(words) || (/^(?:they |it |that )?gets? /i.test(match[0]) && /^\w+$/.test(words))) continue
+    if (/^(?:glue|resin|adhesive)$/i.test(words) || (/^(?:(?:they |it |that )?gets? |\w+ed )/i.test(match[0]) && /^\w+$/.test(words))) continue
     const key = words.toLowerCase()
     if (facts.some(fact => fact.text.toLowerCase() === key && cue.startMs - fact.atMs < 600_000)) continue
     facts.push({ atMs: cue.startMs, kind: 'adhesive', text: words, value: null, unit: null })

@@ -24,8 +24,8 @@ const DIMENSION = /^(?:wide|thick|long|deep|high|tall|across|apart|diameter|radi
 const MATERIAL = /^(?:ply|plywood|stock|spruce|oak|ash|cedar|fir|pine|larch|mahogany|walnut|teak|maple|timber|lumber|board|boards|sheet|sheets|okoume|meranti|thick|thickness|strip|planking|material|marine|acrylic|polycarbonate|plate|perspex|poplar|elm|birch|planks|staff)$/
 const FASTENER = /^(?:screws?|nails?|staples?|bolts?|rivets?|rings?|brads?|roves?|tacks|pins)$/
 const VAGUE_BEFORE = /^(?:couple|few|several|some|many)$/
-const HEAT = /\b(?:in here|in the (?:shed|shop|garage|barn|workshop|tent|room)|outside|warm|cold|cool|hot|heater|heat|temperature|thermometer|fahrenheit|celsius|centigrade|today|this morning|overnight|above|below freezing|the glue|epoxy|resin|hardener|cure|curing|kettle|steam|oven|weather|it's only|got up to|room|air|roof|pot life|minutes|tonight|sunny)\b/
-const ANGLE_WORDS = /\b(?:bevel|angle|rake|flare|slope|plane|cut|set|tilt|gauge|square|miter|mitre|saw|blade|edge|corner|camber|lean|leans|twist|bend|off|lean it|stick|brush|upright|vertical|table)\b/
+const HEAT = /\b(?:in here|in the (?:shed|shop|garage|barn|workshop|tent|room)|outside|warm|cold|cool|hot|heater|heat|temperature|thermometer|fahrenheit|celsius|centigrade|today|this morning|overnight|above|below freezing|the glue|epoxy|resin|hardener|cure|curing|kettle|steam|oven|weather|it's only|got up to|room|air|roof|pot life|minutes|tonight|sunny|cook|cooks|boil|warmed|warmed up)\b/
+const ANGLE_WORDS = /\b(?:bevel|angle|rake|flare|slope|plane|cut|set|tilt|gauge|square|miter|mitre|saw|blade|edge|corner|camber|lean|leans|twist|bend|off|lean it|stick|upright|vertical|table)\b/
 
 interface Heard { tokens: FactToken[], text: string, lower: string, cueAt: (offset: number) => { startMs: number, endMs: number }, speaker: Speaker, inches: boolean }
 
@@ -133,7 +133,7 @@ function readGauge(heard: Heard, at: number): Found | null {
 /** "inch and a half", with nothing before it. */
 function readBareInchAndAHalf(heard: Heard, at: number): Found | null {
   const first = word(heard, at)
-  if (first !== 'inch' && first !== 'foot') return null
+  if (!/^(?:inch|foot|centimet(?:er|re)|met(?:er|re))$/.test(first)) return null
   if (word(heard, at + 1) !== 'and') return null
   const more = readNumber(heard.tokens, at + 2)
   if (!more || more.form !== 'fraction') return null
@@ -269,6 +269,14 @@ function readMeasured(heard: Heard, number: SpokenNumber): Found | null {
       }
     }
   }
+  // "two metre fifteen", "four meters sixty": centimetres after metres.
+  if (unit.unit.mm === 1000) {
+    const more = readNumber(heard.tokens, to)
+    if (more && !more.article && more.form === 'whole' && Number.isInteger(more.value) && more.value >= 5 && more.value < 100 && !unitAfter(heard, more.to) && !COUNTED.test(word(heard, more.to)) && !NOT_MEASURED.test(word(heard, more.to))) {
+      total += more.value * 10
+      to = more.to
+    }
+  }
   if (min) {
     if (isIdleTime(heard, number, unit.at, to)) return { to }
     return { fact: fact(heard, number.from, to, 'time', round2(total), 'min'), to }
@@ -367,6 +375,7 @@ function readCount(heard: Heard, number: SpokenNumber): Found | null {
   if (number.article || number.form !== 'whole' || !Number.isInteger(number.value) || number.value < 2 || number.value > 5000) return null
   if (word(heard, number.from - 1) === '.' && heard.tokens[number.from]!.number) return null
   const before = word(heard, number.from - 1)
+  if (/^(?:last|first|next|other)$/.test(before) && number.value >= 3 && /^(?:ribs|frames|planks|strakes|strips|screws|holes|clamps|stitches|rivets|beams|staples|boards|nails|bolts|lashings|pegs)$/.test(word(heard, number.to))) return { fact: fact(heard, number.from, number.to + 1, 'count', number.value, 'count'), to: number.to + 1 }
   if (/^(?:number|no|step|about|like|the|last|first|next|these|those|all|other|my|them|any)$/.test(before) && number.value < 6 && before !== 'about') return null
   const text = [0, 1, 2, 3].map(i => word(heard, number.to + i))
   let at = -1
@@ -379,6 +388,8 @@ function readCount(heard: Heard, number: SpokenNumber): Found | null {
   }
   if (at >= 0 && (number.value >= 3 || text[at] === 'coats')) return { fact: fact(heard, number.from, number.to + at + 1, 'count', number.value, 'count'), to: number.to + at + 1 }
   if (at >= 0) return null
+  if (text[0] === 'extra' && number.value >= 3) return { fact: fact(heard, number.from, number.to + 1, 'count', number.value, 'count'), to: number.to + 1 }
+  if (/^(?:in|at|to|for)$/.test(text[0]!) && text[1] === 'each' && /^(?:end|side|one|beam|frame|rib|plank|board|corner|joint|edge|lap|place|station|bay|foot)$/.test(text[2]!)) return { fact: fact(heard, number.from, number.to + 3, 'count', number.value, 'count'), to: number.to + 3 }
   if (/^(?:up|along|down|on|per|each|a)$/.test(text[0]!) && /^(?:each|the|per|every|a|side|outside|inside|bottom|top)$/.test(text[1]!) && /^(?:side|sides|bottom|top|outside|inside|edge|edges|end|ends|each|row|plank|strake|bay|frame|rib|foot|joint|lap|station|corner)$/.test([text[1]!, text[2]!].find(item => /^(?:side|sides|bottom|top|outside|inside|edge|edges|end|ends|row|plank|strake|bay|frame|rib|foot|joint|lap|station|corner)$/.test(item)) ?? '')) {
     const to = number.to + (text[1] === 'side' ? 2 : 3)
     return { fact: fact(heard, number.from, to, 'count', number.value, 'count'), to }

@@ -24,6 +24,14 @@ export function readNumber(tokens: readonly FactToken[], from: number): SpokenNu
   const whole = readWhole(tokens, from)
   if (fraction && (!whole || fraction.to > whole.to || fraction.exact)) return { value: fraction.value, from, to: fraction.to, form: 'fraction', article: false, parts: fraction.parts }
   if (!whole) return null
+  // "one point two"
+  if (tokens[whole.to]?.text === 'point' && !whole.article) {
+    let to = whole.to + 1
+    let digits = ''
+    for (; SMALL[tokens[to]?.text ?? ''] !== undefined && SMALL[tokens[to]!.text]! < 10; to++) digits += SMALL[tokens[to]!.text]
+    if (!digits && tokens[to]?.number) digits = tokens[to++]!.text
+    if (digits) return { value: Number(`${whole.value}.${digits}`), from, to, form: 'whole', article: false, parts: 1 }
+  }
   // "1 1⁄2", "2 and three eighths", "one and a half", "3-1/2"
   let next = whole.to
   const digits = tokens[from]!.number

@@ -12,6 +12,8 @@ export const KINDS = W + 3
 export interface Lattice {
   /** Number of steps. */
   S: number
+  /** The step last worked on before the first node, as m; 0 for none. */
+  startsOn: number
   /** Cue indices, ascending; the last is the number of cues. */
   nodes: number[]
   /** From which node a chapter that ends at node j may start (the earliest). */
@@ -141,6 +143,17 @@ class Sums {
 
 const BEHIND = 24
 
+const exponentials = new WeakMap<Float64Array, Float64Array>()
+
+/** The exponentials of a table of scores, kept with it. */
+function waysOf(change: Float64Array): Float64Array {
+  const known = exponentials.get(change)
+  if (known) return known
+  const ways = change.map(value => Math.exp(value))
+  exponentials.set(change, ways)
+  return ways
+}
+
 /** Scores of entering each state at node i, from the scores of having ended there; `sum` or best. */
 function enter(lattice: Lattice, i: number, ended: Float64Array, out: Float64Array): void {
   const { S, move, change, begins, toStepless, again } = lattice
@@ -157,6 +170,9 @@ function enter(lattice: Lattice, i: number, ended: Float64Array, out: Float64Arr
     all[m] = logSum(worked[m]!, chatted[m]!)
   }
   const buffer = new Float64Array(S + 1)
+  const shares = new Float64Array(W)
+  const unturned = Math.exp(-turn)
+  const ways = waysOf(change)
   const live: number[] = []
   for (let m = 0; m <= S; m++) if (all[m]! !== NONE) live.push(m)
   for (let s = 0; s < S; s++) {
@@ -164,15 +180,15 @@ function enter(lattice: Lattice, i: number, ended: Float64Array, out: Float64Arr
     for (let n = 0; n < live.length; n++) buffer[n] = live[n] === m ? NONE : all[live[n]!]! + move[live[n]! * S + s]!
     const other = logSumOf(buffer, 0, live.length, 1)
     const resumed = chatted[m]! + move[m * S + s]!
-    const any = worked[m]! !== NONE
+    // Changes of operation are summed as shares of the likeliest: a matrix product, no logarithms.
+    const top = worked[m]!
+    if (top !== NONE) for (let before = 0; before < W; before++) shares[before] = Math.exp(ended[m * KINDS + before]! - top)
     for (let kind = 0; kind < W; kind++) {
       let score = logSum(other + begins[kind]!, resumed)
-      if (any) {
-        for (let before = 0; before < W; before++) {
-          const e = ended[m * KINDS + before]!
-          if (e === NONE) continue
-          score = logSum(score, before === kind && seam ? e - turn : e + change[before * W + kind]!)
-        }
+      if (top !== NONE) {
+        let sum = 0
+        for (let before = 0; before < W; before++) sum += shares[before]! * (before === kind && seam ? unturned : ways[before * W + kind]!)
+        score = logSum(score, top + Math.log(sum))
       }
       out[m * KINDS + kind] = score + turn
     }
@@ -193,9 +209,13 @@ function enter(lattice: Lattice, i: number, ended: Float64Array, out: Float64Arr
 /** How a session may begin. */
 function begin(lattice: Lattice, out: Float64Array): void {
   out.fill(NONE)
-  const { S, move, begins, toStepless } = lattice
-  for (let s = 0; s < S; s++) for (let kind = 0; kind < W; kind++) out[(s + 1) * KINDS + kind] = move[s]! + begins[kind]!
-  for (let kind = W; kind < KINDS; kind++) out[kind] = toStepless[kind - W]!
+  const { S, startsOn, move, begins, toStepless } = lattice
+  for (let s = 0; s < S; s++) {
+    // What was under way before goes on for nothing.
+    const same = s + 1 === startsOn
+    for (let kind = 0; kind < W; kind++) out[(s + 1) * KINDS + kind] = same ? 0 : move[startsOn * S + s]! + begins[kind]!
+  }
+  for (let kind = W; kind < KINDS; kind++) out[startsOn * KINDS + kind] = toStepless[kind - W]!
 }
 
 /** Log of the sum over all ways to tell the session, and per node what ended and entered there. */
@@ -249,18 +269,24 @@ function leave(lattice: Lattice, i: number, following: Float64Array, out: Float6
     stepless[m] = logSumOf(three, 0, 3, 1)
   }
   const others = new Float64Array(S)
+  const shares = new Float64Array(W)
+  const unturned = Math.exp(-turn)
+  const ways = waysOf(change)
   const live: number[] = []
   for (let s = 0; s < S; s++) if (begun[s]! !== NONE) live.push(s)
   for (let m = 0; m <= S; m++) {
     for (let n = 0; n < live.length; n++) others[n] = live[n]! + 1 === m ? NONE : begun[live[n]!]! + move[m * S + live[n]!]!
     const away = logSumOf(others, 0, live.length, 1)
     if (m) {
+      const top = plain[m - 1]!
+      if (top !== NONE) for (let next = 0; next < W; next++) shares[next] = Math.exp(following[m * KINDS + next]! - top)
+      const elsewhere = logSum(away, stepless[m]!)
       for (let kind = 0; kind < W; kind++) {
-        let score = logSum(away, stepless[m]!)
-        for (let next = 0; next < W; next++) {
-          const f = following[m * KINDS + next]!
-          if (f === NONE) continue
-          score = logSum(score, next === kind && seam ? f - turn : f + change[kind * W + next]!)
+        let score = elsewhere
+        if (top !== NONE) {
+          let sum = 0
+          for (let next = 0; next < W; next++) sum += shares[next]! * (next === kind && seam ? unturned : ways[kind * W + next]!)
+          score = logSum(score, top + Math.log(sum))
         }
         out[m * KINDS + kind] = score + turn
       }

@@ -21,11 +21,11 @@ const GO_ON = -9
 
 /** The features of moving from one step to another, by name, given to `each`. */
 export function moveFeatures(material: Material, from: number, to: number, each: (name: string, value: number) => void): void {
-  const { steps } = material.index
+  const { steps, places } = material.index
   if (from === 0) return each('to.first', 1)
   const a = from - 1
   if (a === to) return each('to.resume', 1)
-  const by = to - a
+  const by = places[to]! - places[a]!
   each(by === 1 ? 'to.plus1' : by === 2 ? 'to.plus2' : by >= 3 && by <= 5 ? 'to.plus3to5' : by > 5 ? 'to.further' : by === -1 ? 'to.minus1' : 'to.back', 1)
   const mine = new Set(steps[a]!.parts)
   const shared = steps[to]!.parts.filter(part => mine.has(part)).length
@@ -115,8 +115,8 @@ function aliveSteps(material: Material, sums: Float64Array): Uint8Array {
   return alive
 }
 
-/** The scores of a session under given weights. `allow` says which steps may be used at all. */
-export function latticeOf(material: Material, weights: Weights, bonus?: Float64Array): Lattice {
+/** The scores of a session under given weights; `startsOn` is the step worked on before it, 1-based, 0 for none. */
+export function latticeOf(material: Material, weights: Weights, startsOn = 0): Lattice {
   const { S, speech, nodes, fixed } = material
   const n = speech.cues.length
   const stepWeights = STEP_FEATURES.map(name => weights[`step.${name}`] ?? 0)
@@ -148,7 +148,6 @@ export function latticeOf(material: Material, weights: Weights, bonus?: Float64A
     fit[at] = (weights['kind.inTitle'] ?? 0) * title + (weights['kind.inText'] ?? 0) * text + (text ? 0 : weights['kind.notInText'] ?? 0)
     fitRate[at] = (weights['kind.inTitleRate'] ?? 0) * title + (weights['kind.inTextRate'] ?? 0) * text
   }
-  if (bonus) for (let s = 0; s < S; s++) for (let kind = 0; kind < W; kind++) fit[s * W + kind]! += bonus[s]!
   const scoreOf = (features: (each: (name: string, value: number) => void) => void) => {
     let sum = 0
     features((name, value) => { sum += (weights[name] ?? 0) * value })
@@ -184,6 +183,7 @@ export function latticeOf(material: Material, weights: Weights, bonus?: Float64A
   const fixedTo = new Map(fixed.map(stretch => [stretch.to, stretch.from]))
   return {
     S,
+    startsOn,
     nodes,
     earliest: j => earliestNode[j]!,
     allowed: (i, j) => {

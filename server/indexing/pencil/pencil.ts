@@ -9,6 +9,7 @@ import { KINDS, W } from './lattice'
 import { latticeOf } from './latticeOf'
 import { decode, type Decoded, type Marginals, marginalsOf } from './marginals'
 import { type FixedStretch, gather, type Material } from './material'
+import { narrow, portionsOf, takePortion } from './portions'
 import { listen, type Speech } from './speech'
 import { indexSteps } from './stepEvidence'
 import { hearTold } from './told'
@@ -51,15 +52,25 @@ export function pencilChapters(input: PencilInput, fitted: Fitted = FITTED): Pen
   const steps = known.length ? known : input.steps
   if (!speech.cues.length) return silentChapters(input)
   const fixed = fixedStretches(speech, steps, input.fixed ?? [])
-  const material = gather(speech, indexSteps(steps, input.parts), input.learned ?? [], fixed)
   const { weights, curve } = known.length ? fitted.ticked : fitted.open
-  const lattice = latticeOf(material, weights)
-  const marginals = marginalsOf(lattice, speech.cues.length)
-  const decoded = decode(lattice, marginals, material.seconds, DECODING)
+  const index = indexSteps(steps, input.parts)
   const book = partBook(input.parts)
-  const proposed = decoded.map(chapter => describe(chapter, material, marginals, steps, input, book, curve))
+  const proposed: Proposal[] = []
+  let before: PlanStep | null = null
+  for (const portion of portionsOf(speech, fixed)) {
+    const mine = fixed.filter(({ from, to }) => from >= portion.from && to <= portion.to).map(stretch => ({ ...stretch, from: stretch.from - portion.from, to: stretch.to - portion.from }))
+    const material = narrow(gather(takePortion(speech, portion), index, input.learned ?? [], mine), weights, MOST_STEPS)
+    const lattice = latticeOf(material, weights, before ? material.index.steps.indexOf(before) + 1 : 0)
+    const marginals = marginalsOf(lattice, material.speech.cues.length)
+    const decoded = decode(lattice, marginals, material.seconds, DECODING)
+    for (const chapter of decoded) proposed.push(describe(chapter, material, marginals, input, book, curve))
+    before = decoded.reduce<PlanStep | null>((last, { step }) => step === null ? last : material.index.steps[step]!, before)
+  }
   return layOut(proposed, input)
 }
+
+/** Steps weighed in one portion of a session; what nobody speaks of there is left out. */
+const MOST_STEPS = 40
 
 /** Chosen on the labelled sessions: what an operation and a well-placed turn are worth, in seconds of the right step. */
 export const DECODING = { operation: 0.5, turn: 10, bar: 0.35 }
@@ -88,8 +99,9 @@ function fixedStretches(speech: Speech, steps: PlanStep[], fixed: readonly Fixed
 
 type Proposal = Omit<PencilledChapter, 'fixed'>
 
-function describe(chapter: Decoded, material: Material, marginals: Marginals, steps: PlanStep[], input: PencilInput, book: ReturnType<typeof partBook>, curve: Curve): Proposal {
+function describe(chapter: Decoded, material: Material, marginals: Marginals, input: PencilInput, book: ReturnType<typeof partBook>, curve: Curve): Proposal {
   const { speech, seconds, S } = material
+  const { steps } = material.index
   const step = chapter.step === null ? null : steps[chapter.step]!
   const operation: Operation = chapter.kind < W ? WORK_KINDS[chapter.kind]! : STEPLESS_KINDS[chapter.kind - W]!
   const width = S + 1
@@ -110,7 +122,7 @@ function describe(chapter: Decoded, material: Material, marginals: Marginals, st
   const cue = speech.cues[chapter.from]!
   return {
     clip: cue.clip,
-    startMs: cue.first ? 0 : cue.startMs,
+    startMs: cue.first && (chapter.from > 0 || isClipStart(cue, input)) ? 0 : cue.startMs,
     endMs: speech.cues[chapter.to - 1]!.endMs,
     step: step?.number ?? null,
     operation,
@@ -121,6 +133,9 @@ function describe(chapter: Decoded, material: Material, marginals: Marginals, st
     otherOperations,
   }
 }
+
+/** The first cue of a portion is a clip's first only when the clip starts there. */
+const isClipStart = (cue: Speech['cues'][number], input: PencilInput) => input.clips[cue.clip]!.cues.every(other => other.startMs >= cue.startMs)
 
 const endOf = (clip: SpokenClip) => clip.durationMs ?? Math.max(0, ...clip.cues.map(cue => cue.endMs))
 

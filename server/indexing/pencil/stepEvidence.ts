@@ -16,6 +16,8 @@ const OPERATION_BOOK = new PhraseBook(WORK_KINDS.flatMap((kind, i) => HEARD[kind
 /** What the plan says of each step, ready to be held against speech. */
 export interface StepIndex {
   steps: PlanStep[]
+  /** Where each step stands in the plan (or among the steps of the day), for how far a move goes. */
+  places: number[]
   /** Stem → for each step that has it, how much it says of it, by feature. */
   words: Map<string, { step: number, feature: number, weight: number }[]>
   names: PhraseBook<{ steps: { step: number, weight: number }[] }>
@@ -104,7 +106,7 @@ export function indexSteps(steps: PlanStep[], parts: readonly PlanPart[]): StepI
     operationsInTitle.set(operationsOf(step.title), i * WORK_KINDS.length)
     operationsInText.set(operationsOf(`${step.title}. ${step.description}. ${step.materials.join(', ')}`), i * WORK_KINDS.length)
   })
-  return { steps, words, names: book, topics, operationsInTitle, operationsInText }
+  return { steps, places: steps.map((_, i) => i), words, names: book, topics, operationsInTitle, operationsInText }
 }
 
 function lastWord(name: string): string {
