@@ -110,7 +110,7 @@ function readGauge(heard: Heard, at: number): Found | null {
     if (!number || number.value < 2 || number.value > 24 || !Number.isInteger(number.value)) return null
     if (first === 'no' && from === at + 1 && !heard.tokens[from]!.number) return null
     const plain = word(heard, number.to) === 's' && heard.tokens[number.to]!.start === heard.tokens[number.to - 1]!.end
-    const after = Array.from({ length: 6 }, (_, i) => word(heard, number.to + i)).some(text => FASTENER.test(text))
+    const after = Array.from({ length: 4 }, (_, i) => word(heard, number.to + i)).some(text => FASTENER.test(text) && text !== 'roves')
     const earlier = Array.from({ length: 20 }, (_, i) => word(heard, at - 1 - i)).some(text => /^(?:screws?|bronze|stainless|countersunk)$/.test(text))
     if (!after && !earlier && !many && !plain) return { to: number.to }
     let to = number.to
@@ -277,11 +277,12 @@ function readMeasured(heard: Heard, number: SpokenNumber): Found | null {
       to = more.to
     }
   }
+  // "An hour to the inch" is a rule of thumb, not a wait.
+  if (number.article && (word(heard, to) === 'or' || (/^(?:to|per|an|every)$/.test(word(heard, to)) && min))) return { to: to + 2 }
   if (min) {
     if (isIdleTime(heard, number, unit.at, to)) return { to }
     return { fact: fact(heard, number.from, to, 'time', round2(total), 'min'), to }
   }
-  if (number.article && word(heard, to) === 'or') return { to: to + 2 }
   if (number.article && word(heard, unit.at) === 'foot' && to === unit.at + 1 && !DIMENSION.test(word(heard, to)) && !/^(?:every|by|than|over|under|about|nearly|only)$/.test(word(heard, number.from - 1))) return { to }
   if (number.article && /^(?:yard|yards)$/.test(word(heard, unit.at))) return { to }
   if (number.article && unit.unit.mm === 1) return { to }
@@ -360,7 +361,7 @@ function readBareLength(heard: Heard, number: SpokenNumber): Found | null {
     if (!heard.inches && !/[⁄/]|eighth|sixteenth/.test(heard.text.slice(heard.tokens[number.from]!.start, heard.tokens[number.to - 1]!.end))) return { to: number.to }
     return { fact: fact(heard, number.from, number.to, lengthKind(heard, number.to, number.from), tenth(number.value * INCH), 'mm'), to: number.to }
   }
-  if (number.article) return null
+  if (number.article || (number.value === 1 && !heard.tokens[number.from]!.number)) return null
   // "It's 2240 and 2243": nothing else in a metric shop has four figures.
   const metres = !heard.inches && heard.tokens[number.from]!.number && number.value >= 150 && number.value < 12_000 && (number.value < 1900 || number.value > 2035)
   if (metres && /^(?:it's|is|at|to|and|,|that's|says)$/.test(word(heard, number.from - 1)) && /^(?:and|[.,;]|both|on|at|from|to|exactly|dead|)$/.test(next)) return { fact: fact(heard, number.from, number.to, 'length', number.value, 'mm'), to: number.to }
@@ -373,7 +374,7 @@ function readBareLength(heard: Heard, number: SpokenNumber): Found | null {
 /** "31 holes", "five layers", "six up each side": at least three of something that is counted in a shop. */
 function readCount(heard: Heard, number: SpokenNumber): Found | null {
   if (number.article || number.form !== 'whole' || !Number.isInteger(number.value) || number.value < 2 || number.value > 5000) return null
-  if (word(heard, number.from - 1) === '.' && heard.tokens[number.from]!.number) return null
+  if (word(heard, number.from - 1) === '.' && heard.tokens[number.from]!.number && heard.tokens[number.from - 1]!.end === heard.tokens[number.from]!.start) return null
   const before = word(heard, number.from - 1)
   if (/^(?:last|first|next|other)$/.test(before) && number.value >= 3 && /^(?:ribs|frames|planks|strakes|strips|screws|holes|clamps|stitches|rivets|beams|staples|boards|nails|bolts|lashings|pegs)$/.test(word(heard, number.to))) return { fact: fact(heard, number.from, number.to + 1, 'count', number.value, 'count'), to: number.to + 1 }
   if (/^(?:number|no|step|about|like|the|last|first|next|these|those|all|other|my|them|any)$/.test(before) && number.value < 6 && before !== 'about') return null
@@ -389,7 +390,7 @@ function readCount(heard: Heard, number: SpokenNumber): Found | null {
   if (at >= 0 && (number.value >= 3 || text[at] === 'coats')) return { fact: fact(heard, number.from, number.to + at + 1, 'count', number.value, 'count'), to: number.to + at + 1 }
   if (at >= 0) return null
   if (text[0] === 'extra' && number.value >= 3) return { fact: fact(heard, number.from, number.to + 1, 'count', number.value, 'count'), to: number.to + 1 }
-  if (/^(?:in|at|to|for)$/.test(text[0]!) && text[1] === 'each' && /^(?:end|side|one|beam|frame|rib|plank|board|corner|joint|edge|lap|place|station|bay|foot)$/.test(text[2]!)) return { fact: fact(heard, number.from, number.to + 3, 'count', number.value, 'count'), to: number.to + 3 }
+  if (/^(?:in|at|to|for|on)$/.test(text[0]!) && text[1] === 'each' && /^[a-z]+$/.test(text[2]!)) return { fact: fact(heard, number.from, number.to + 3, 'count', number.value, 'count'), to: number.to + 3 }
   if (/^(?:up|along|down|on|per|each|a)$/.test(text[0]!) && /^(?:each|the|per|every|a|side|outside|inside|bottom|top)$/.test(text[1]!) && /^(?:side|sides|bottom|top|outside|inside|edge|edges|end|ends|each|row|plank|strake|bay|frame|rib|foot|joint|lap|station|corner)$/.test([text[1]!, text[2]!].find(item => /^(?:side|sides|bottom|top|outside|inside|edge|edges|end|ends|row|plank|strake|bay|frame|rib|foot|joint|lap|station|corner)$/.test(item)) ?? '')) {
     const to = number.to + (text[1] === 'side' ? 2 : 3)
     return { fact: fact(heard, number.from, to, 'count', number.value, 'count'), to }

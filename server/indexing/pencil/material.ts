@@ -40,10 +40,10 @@ export interface Material {
 /** Longest chapter that is weighed as one, s; a longer one is still found when it is all there is. */
 const LONGEST_S = 240
 
-export function gather(speech: Speech, index: StepIndex, learned: readonly Learned[] = [], fixed: FixedStretch[] = []): Material {
+/** `day` says where a portion stands in a session whose steps are known; without it nothing is made of that. */
+export function gather(speech: Speech, index: StepIndex, learned: readonly Learned[] = [], fixed: FixedStretch[] = [], day?: { from: number, whole: number }): Material {
   const S = index.steps.length
   const n = speech.cues.length
-  const steps = hearSteps(speech, index, learned)
   const kinds = hearKinds(speech)
   const turns = hearTurns(speech)
   const seconds = new Float64Array(n)
@@ -60,6 +60,7 @@ export function gather(speech: Speech, index: StepIndex, learned: readonly Learn
     if (cue.first) seconds[i]! += Math.min(10, cue.startMs / 1000)
     whole += seconds[i]!
   }
+  const steps = hearSteps(speech, index, learned, day && { at: placesInDay(seconds, day), seconds })
   let passed = 0
   for (let i = 0; i < n; i++) {
     start[i] = Math.exp(-passed / 25)
@@ -78,6 +79,18 @@ export function gather(speech: Speech, index: StepIndex, learned: readonly Learn
     shop[i] = Math.min(2, most / 3 + heard / 3)
   }
   return { speech, index, S, steps, openWords, openTopic, kinds, turns, seconds, shop, start, end, nodes: nodesOf(speech, turns, fixed), fixed }
+}
+
+/** How much of the day has passed at each cue, 0 to 1. `from` and `whole` are cues: what came before, and all. */
+function placesInDay(seconds: Float64Array, day: { from: number, whole: number }): Float64Array {
+  const all = seconds.reduce((sum, value) => sum + value, 0)
+  const share = seconds.length / Math.max(1, day.whole)
+  let passed = 0
+  return seconds.map((value) => {
+    const at = day.from / Math.max(1, day.whole) + share * (passed + value / 2) / Math.max(1e-9, all)
+    passed += value
+    return at
+  })
 }
 
 /** Where a chapter may start: not in the middle of a sentence, nor more often than about every fifth second. */

@@ -11,7 +11,7 @@ import { decode, type Decoded, type Marginals, marginalsOf } from './marginals'
 import { type FixedStretch, gather, type Material } from './material'
 import { narrow, portionsOf, takePortion } from './portions'
 import { listen, type Speech } from './speech'
-import { indexSteps } from './stepEvidence'
+import { indexSteps, STEP_FEATURES } from './stepEvidence'
 import { hearTold } from './told'
 import { type FixedChapter, type Learned, type PencilledChapter, type PlanPart, type PlanStep, type SpokenClip, STEPLESS_KINDS, WORK_KINDS } from './types'
 import type { Weights } from './model'
@@ -59,7 +59,7 @@ export function pencilChapters(input: PencilInput, fitted: Fitted = FITTED): Pen
   let before: PlanStep | null = null
   for (const portion of portionsOf(speech, fixed)) {
     const mine = fixed.filter(({ from, to }) => from >= portion.from && to <= portion.to).map(stretch => ({ ...stretch, from: stretch.from - portion.from, to: stretch.to - portion.from }))
-    const material = narrow(gather(takePortion(speech, portion), index, input.learned ?? [], mine), weights, MOST_STEPS)
+    const material = narrow(gather(takePortion(speech, portion), index, input.learned ?? [], mine, known.length ? { from: portion.from, whole: speech.cues.length } : undefined), weights, MOST_STEPS)
     const lattice = latticeOf(material, weights, before ? material.index.steps.indexOf(before) + 1 : 0)
     const marginals = marginalsOf(lattice, material.speech.cues.length)
     const decoded = decode(lattice, marginals, material.seconds, DECODING)
@@ -73,7 +73,7 @@ export function pencilChapters(input: PencilInput, fitted: Fitted = FITTED): Pen
 const MOST_STEPS = 40
 
 /** Chosen on the labelled sessions: what an operation and a well-placed turn are worth, in seconds of the right step. */
-export const DECODING = { operation: 0.5, turn: 10, bar: 0.35 }
+export const DECODING = { operation: 0.75, turn: 20, bar: 0.4 }
 
 /** Fixed chapters in terms of cues; those over silence are cut in afterwards. */
 function fixedStretches(speech: Speech, steps: PlanStep[], fixed: readonly FixedChapter[]): FixedStretch[] {
@@ -218,7 +218,7 @@ export function likeliestStep(words: string, steps: PlanStep[], parts: readonly 
   if (!speech.cues.length || !steps.length) return null
   const material = gather(speech, indexSteps(steps, parts))
   const scores = steps.map((step, s) => {
-    const row = material.steps.subarray(s * 8, s * 8 + 8)
+    const row = material.steps.subarray(s * STEP_FEATURES.length, (s + 1) * STEP_FEATURES.length)
     return { step: step.number, score: 1.2 * row[0]! + row[1]! + 1.2 * row[2]! + 0.3 * row[3]! + 0.6 * row[4]! + 0.5 * row[5]! }
   }).sort((a, b) => b.score - a.score)
   const [first, second] = scores

@@ -6,9 +6,9 @@ import type { Speech } from './speech'
 import { type Learned, type PlanPart, type PlanStep, WORK_KINDS } from './types'
 
 /** How a cue can speak for a step; each is a number for every cue and step. */
-export const STEP_FEATURES = ['title', 'description', 'part', 'material', 'topic', 'operation', 'learned', 'elsewhen'] as const
+export const STEP_FEATURES = ['title', 'description', 'part', 'material', 'topic', 'operation', 'learned', 'elsewhen', 'place', 'farPlace'] as const
 const K = STEP_FEATURES.length
-const [TITLE, DESCRIPTION, PART, MATERIAL, TOPIC, OPERATION, LEARNED, ELSEWHEN] = STEP_FEATURES.map((_, i) => i) as [number, number, number, number, number, number, number, number]
+const [TITLE, DESCRIPTION, PART, MATERIAL, TOPIC, OPERATION, LEARNED, ELSEWHEN, PLACE, FAR_PLACE] = STEP_FEATURES.map((_, i) => i) as [number, number, number, number, number, number, number, number, number, number]
 
 const TOPIC_BOOK = new PhraseBook(TOPICS.flatMap((topic, i) => topic.words.map(({ phrase, weight }) => [phrase, { topic: i, weight }] as const)))
 const OPERATION_BOOK = new PhraseBook(WORK_KINDS.flatMap((kind, i) => HEARD[kind].map(({ phrase, weight }) => [phrase, { kind: i, weight }] as const)))
@@ -121,7 +121,7 @@ const AGAIN_MS = 40_000
  * What each cue says for each step: cue × step × feature. A word said again soon counts less, so that one word
  * does not drown the others; what is said of other times goes to a feature of its own.
  */
-export function hearSteps(speech: Speech, index: StepIndex, learned: readonly Learned[] = []): Float32Array {
+export function hearSteps(speech: Speech, index: StepIndex, learned: readonly Learned[] = [], passed?: Passed): Float32Array {
   const S = index.steps.length
   const out = new Float32Array(speech.cues.length * S * K)
   const lastSaid = new Map<string, { atMs: number, times: number }>()
@@ -165,7 +165,23 @@ export function hearSteps(speech: Speech, index: StepIndex, learned: readonly Le
   })
   if (learned.length) hearLearned(speech, index, learned, (cue, step, amount) => { out[(cue * S + step) * K + LEARNED]! += amount })
   centre(out, S)
+  if (passed) placeSteps(out, S, passed)
   return out
+}
+
+/** How far into the session each cue starts, 0 to 1, and how long it lasts, s. */
+export interface Passed { at: Float64Array, seconds: Float64Array }
+
+/** A day's work goes down the plan: how far a step lies from where the session stands, for each cue by its length. */
+function placeSteps(out: Float32Array, S: number, { at, seconds }: Passed): void {
+  for (let cue = 0; cue < at.length; cue++) {
+    const time = Math.min(8, seconds[cue]!) / 10
+    for (let s = 0; s < S; s++) {
+      const off = Math.abs((s + 0.5) / S - at[cue]!)
+      out[(cue * S + s) * K + PLACE] = -off * time
+      out[(cue * S + s) * K + FAR_PLACE] = -Math.max(0, off - 0.3) * time
+    }
+  }
 }
 
 /** Words that the builder used before of a step and seldom of others. */

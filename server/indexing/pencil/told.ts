@@ -15,6 +15,7 @@ const OUTRIGHT = [
   /\b(?:no|isn'?t any|not any|any) (?:footage|film|video|pictures?) of (?:it|that|this|them)\b|\bno (?:footage|film|video|pictures?)\b|\bthere'?s no (?:footage|film|video)\b/,
   /\bwithout (?:the |a |any )?(?:camera|phone|film)\b/,
   /\bby myself with (?:the )?(?:camera|phone) off\b|\b(?:camera|phone) off\b/,
+  /\b(?:i'?d|i would|we'?d|we would|would) have (?:film|show|record)\w*\b|\bmeant to (?:film|record|show)\b|\bnothing to (?:film|show)\b/,
   /\b(?:hands|gloves) (?:were|was) too (?:sticky|gluey|dirty|mucky)\b/,
   /\bforgot to (?:press|hit|push|turn|switch|start|film|record)\b|\bthought i (?:was|had been|had) (?:film|record|press|hit)\w*\b|\b(?:film|record)(?:ed|ing) (?:my|the) (?:foot|feet|floor|ceiling|pocket|lap|wall|roof|thumb|knee|shoes?|boots?)\b|\bof (?:his|her|my|their) thumb\b/,
 ]
@@ -30,6 +31,7 @@ const TOLD = [
   new RegExp(String.raw`\b(?:i|we)(?: have|'ve) (?:\w+ )?${DONE} and (?:\w+ )?${DONE}\b`),
   new RegExp(String.raw`\b(?:is|are|was|were|it's|they're|that's) ${DONE}\b[^.?!]{0,45}?\balready\b`),
   /\b(?:that|this|those|these|they) (?:is|are|was|were) from (?:last (?:night|week|weekend)|yesterday|(?:mon|tues|wednes|thurs|fri|satur|sun)day|this morning)\b/,
+  /\b(?:is|are) (?:on|in|done|finished|glued|made) (?:too|already|as well)\b/,
   /\b(?:i|we) spent (?:an?|the|two|three|most|all|about|\w+)\b[^.?!]{0,30}?\b(?:evenings?|nights?|days?|week|weekend|hours?|morning|afternoon)\b/,
   /\b(?:it'?s|they'?ve|that'?s|has|have|they'?re) been (?:all )?\w+ed and \w+ed\b/,
   /\b(?:i|we) did (?:the )?(?:other|same|rest|others|second|port|starboard|left|right|opposite|inside|outside|first|last)\b[^.?!]{0,60}?\b(?:the same(?: way)?|already|earlier|yesterday|last|while|before|on my own|myself|off|same)\b/,

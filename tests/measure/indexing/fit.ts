@@ -13,7 +13,7 @@ export function lessonOf(session: LabelledSession, ticked = false): Lesson {
   const steps = ticked ? session.steps.filter(step => session.truth.chapters.some(chapter => chapter.step === step.number)) : session.steps
   const speech = listen([{ cues: session.cues }])
   const starts = session.truth.chapters.map(chapter => speech.cues.findIndex(cue => cue.startMs >= chapter.startMs - 60))
-  const material = gather(speech, indexSteps(steps, session.parts))
+  const material = gather(speech, indexSteps(steps, session.parts), [], [], ticked ? { from: 0, whole: speech.cues.length } : undefined)
   material.nodes = [...new Set([...material.nodes, ...starts.filter(cue => cue >= 0)])].sort((a, b) => a - b)
   const truth = session.truth.chapters.flatMap((chapter, at) => {
     const from = at ? starts[at]! : 0
@@ -28,7 +28,7 @@ export function lessonOf(session: LabelledSession, ticked = false): Lesson {
 
 /**
  * Weights that make the true chapters of the lessons likely: gradient ascent (Adam) on the conditional log
- * likelihood, held to a starting point by a quadratic penalty.
+ * likelihood, less a quadratic penalty on large weights.
  */
 export function fit(lessons: Lesson[], start: Weights, options: { rounds: number, hold: number, rate?: number, log?: (line: string) => void }): Weights {
   const weights: Weights = { ...start }
@@ -45,9 +45,9 @@ export function fit(lessons: Lesson[], start: Weights, options: { rounds: number
       likelihood += score - logZ
       for (const name of new Set([...Object.keys(counts), ...Object.keys(gold[at]!)])) gradient[name] = (gradient[name] ?? 0) + (gold[at]![name] ?? 0) - (counts[name] ?? 0)
     })
-    const rate = (options.rate ?? 0.08) / (1 + round / 40)
+    const rate = (options.rate ?? 0.2) / (1 + round / 20)
     for (const name of Object.keys(gradient)) {
-      const g = gradient[name]! / lessons.length - options.hold * ((weights[name] ?? 0) - (start[name] ?? 0))
+      const g = gradient[name]! / lessons.length - options.hold * (weights[name] ?? 0)
       m[name] = 0.8 * (m[name] ?? 0) + 0.2 * g
       v[name] = 0.95 * (v[name] ?? 0) + 0.05 * g * g
       weights[name] = (weights[name] ?? 0) + rate * (m[name]! / (1 - 0.8 ** round)) / (Math.sqrt(v[name]! / (1 - 0.95 ** round)) + 1e-6)
