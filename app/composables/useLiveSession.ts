@@ -5,6 +5,9 @@ import type { LiveEvent } from '#server/services/live'
 /** Several changes within this are read in one go. */
 const GATHER_MS = 150
 
+/** Read on their own; the session's detail holds none of them. */
+const OWN_LISTS = new Set<LiveEvent['kind']>(['chapter', 'pencil', 'fact', 'pickup'])
+
 /**
  * A session's detail, kept true while the page stands: progress is put in as it comes, everything else is read again.
  * `onEvent` hears every event besides (chapters, captions), `onGap` when those must be read again too.
@@ -16,7 +19,7 @@ export function useLiveSession(sessionId: () => string, more: { onEvent?: (event
   const { connected } = useSessionEvents(sessionId, {
     event: (event) => {
       if (event.kind === 'task' && event.task) putTask(event.task)
-      else if (event.kind !== 'chapter') void readSoon()
+      else if (!OWN_LISTS.has(event.kind)) void readSoon()
       more.onEvent?.(event)
     },
     gap: () => {

@@ -2,6 +2,7 @@ import { and, eq, isNotNull, isNull } from 'drizzle-orm'
 import type { Transaction } from '../database/client'
 import { captionTracks, type Clip, cues } from '../database/schema'
 import { announce } from './live'
+import { enqueuePencilling } from './pencil/queue'
 import { refreshPassages } from './search/passages'
 
 /**
@@ -17,5 +18,7 @@ export async function releaseTracks(tx: Transaction, clip: Pick<Clip, 'id' | 'se
     await tx.update(captionTracks).set({ clipId: null, read: false, doubt: null, kept: false }).where(eq(captionTracks.id, id))
     await announce(tx, { sessionId: clip.sessionId, kind: 'captions', id })
   }
-  if (tracks.length) await refreshPassages(tx, clip.id)
+  if (!tracks.length) return
+  await refreshPassages(tx, clip.id)
+  await enqueuePencilling(tx, clip.sessionId)
 }

@@ -10,6 +10,7 @@ import { type CaptionTrack, captionTracks, clips, cues, sessions } from '../data
 import { setTask } from './clipTasks'
 import { announce } from './live'
 import { trackKey, trackPrefix } from './objectKeys'
+import { enqueuePencilling } from './pencil/queue'
 import { refreshPassages } from './search/passages'
 
 /**
@@ -60,6 +61,7 @@ async function pairWith(tx: Transaction, track: CaptionTrack, clipId: string | n
   }
   const [paired] = await tx.update(captionTracks).set({ clipId, read: false, doubt: null, kept: false }).where(eq(captionTracks.id, track.id)).returning()
   for (const changed of [track.clipId, clipId]) if (changed) await refreshPassages(tx, changed)
+  await enqueuePencilling(tx, track.sessionId)
   await enqueueReading(tx, paired!)
 }
 
@@ -68,7 +70,10 @@ export async function deleteTrack(database: Database, trackId: string, userId: s
   await database.transaction(async (tx) => {
     const track = await lockTrack(tx, trackId)
     await tx.delete(captionTracks).where(eq(captionTracks.id, trackId))
-    if (track.clipId) await refreshPassages(tx, track.clipId)
+    if (track.clipId) {
+      await refreshPassages(tx, track.clipId)
+      await enqueuePencilling(tx, track.sessionId)
+    }
     await addJob(tx, 'remove-objects', { prefix: trackPrefix(trackId) })
     await announce(tx, { sessionId: track.sessionId, kind: 'captions', id: trackId, by: userId })
   })

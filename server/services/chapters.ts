@@ -1,16 +1,23 @@
-import { and, eq, inArray, sql } from 'drizzle-orm'
+import { and, eq, inArray, notInArray, or, sql } from 'drizzle-orm'
 import { alias } from 'drizzle-orm/pg-core'
 import type { ChapterChanges, ChapterPut } from '#shared/schemas/chapters'
 import type { ChapterView } from '#shared/types/session'
 import { forbiddenIn, forbiddenWords, type Hand } from '#shared/utils/chapters/rights'
 import { DomainError, notFound } from '#shared/utils/errors'
 import type { Database, Executor, Transaction } from '../database/client'
-import { chapterParts, chapters, clips, parts, sessions, steps, users } from '../database/schema'
+import { chapterParts, chapters, clips, dismissals, parts, sessions, steps, users } from '../database/schema'
+import { lockSession } from './clips'
 import { announce } from './live'
+import { realign } from './pencil/realign'
 import { refreshPassages } from './search/passages'
 
 /** What one set of changes came to. */
-export interface ChapterOutcome { chapters: ChapterView[], removed: string[] }
+export interface ChapterOutcome {
+  chapters: ChapterView[]
+  removed: string[]
+  /** What became of the program's own proposals around it. */
+  realigned: { chapters: ChapterView[], removed: string[] }
+}
 
 /** Whoever changes chapters: an account, and what it is on the build. */
 export type ChapterHand = Hand & { id: string }
@@ -23,7 +30,7 @@ export async function listChapters(executor: Executor, where: { sessionId: strin
     .select({
       id: chapters.id, clipId: chapters.clipId, startMs: chapters.startMs, endMs: chapters.endMs, stepId: chapters.stepId, operation: chapters.operation,
       partIds: sql<string[]>`coalesce((select array_agg(${chapterParts.partId} order by ${chapterParts.partId}) from ${chapterParts} where ${chapterParts.chapterId} = ${chapters.id}), '{}')`,
-      inking: chapters.inking, confidence: chapters.confidence, evidence: chapters.evidence, note: chapters.note, version: chapters.version,
+      inking: chapters.inking, confidence: chapters.confidence, evidence: chapters.evidence, alternatives: chapters.alternatives, proposed: chapters.proposed, note: chapters.note, version: chapters.version,
       inkedBy: { id: inkers.id, name: inkers.name }, updatedBy: users.name,
     })
     .from(chapters)
@@ -36,7 +43,8 @@ export async function listChapters(executor: Executor, where: { sessionId: strin
 
 /**
  * Applies everything that one action changes, whole or not at all. Nobody's work is overwritten unseen:
- * each change names the version it was made from. Crew change no chapter that another person has inked.
+ * each change names the version it was made from. Crew change no chapter that another person has inked. What is the
+ * program's own gives way to what a person puts, and the rest of it is then aligned anew around that.
  *
  * @throws DomainError `conflict` with `data.reason`: `changed` (somebody was quicker; `current` holds the chapters
  *   as they now are, `gone` the ids that are no more) or `overlap` (`with` holds the chapters in the way).
@@ -44,7 +52,9 @@ export async function listChapters(executor: Executor, where: { sessionId: strin
  */
 export async function changeChapters(database: Database, sessionId: string, hand: ChapterHand, changes: ChapterChanges): Promise<ChapterOutcome> {
   try {
-    return await database.transaction(tx => applyChanges(tx, sessionId, hand, changes))
+    const { structural, gaveWay, ...outcome } = await database.transaction(tx => applyChanges(tx, sessionId, hand, changes))
+    const realigned = structural ? await realign(database, sessionId) : { changed: [], removed: [] }
+    return { ...outcome, realigned: { chapters: realigned.changed.length ? await listChapters(database, { ids: realigned.changed }) : [], removed: [...gaveWay, ...realigned.removed] } }
   }
   catch (error) {
     if (isOverlap(error)) throw await overlapConflict(database, changes.put)
@@ -52,7 +62,12 @@ export async function changeChapters(database: Database, sessionId: string, hand
   }
 }
 
-async function applyChanges(tx: Transaction, sessionId: string, hand: ChapterHand, changes: ChapterChanges): Promise<ChapterOutcome> {
+/** `structural`: something else is now said of the footage; a note alone is not. */
+interface Applied extends Omit<ChapterOutcome, 'realigned'> { structural: boolean, gaveWay: string[] }
+
+async function applyChanges(tx: Transaction, sessionId: string, hand: ChapterHand, changes: ChapterChanges): Promise<Applied> {
+  // Before the locks of any chapters, as the program does when it moves its own.
+  await lockSession(tx, sessionId)
   const [session] = await tx.select({ buildId: sessions.buildId }).from(sessions).where(eq(sessions.id, sessionId))
   if (!session) throw notFound('That session')
   await checkReferences(tx, sessionId, session.buildId, changes.put)
@@ -62,15 +77,21 @@ async function applyChanges(tx: Transaction, sessionId: string, hand: ChapterHan
 
   const touched = new Set<string>()
   const stale: string[] = []
-  for (const { id, version } of changes.remove) {
-    const [gone] = await tx.delete(chapters).where(and(eq(chapters.id, id), eq(chapters.sessionId, sessionId), eq(chapters.version, version))).returning({ clipId: chapters.clipId })
+  let structural = changes.remove.length > 0
+  for (const { id, version, overProposal, dismiss } of changes.remove) {
+    // The program moves its own between two looks: against a person's word its version counts for nothing.
+    const [gone] = await tx.delete(chapters).where(and(eq(chapters.id, id), eq(chapters.sessionId, sessionId), or(eq(chapters.version, version), chapters.proposed))).returning({ clipId: chapters.clipId, startMs: chapters.startMs, endMs: chapters.endMs })
     if (gone) touched.add(gone.clipId)
-    else stale.push(id)
+    else if (!overProposal) stale.push(id)
+    if (gone && dismiss) await tx.insert(dismissals).values({ chapterId: id, sessionId, ...gone, createdBy: hand.id }).onConflictDoNothing()
   }
+  if (changes.put.length) await tx.delete(dismissals).where(inArray(dismissals.chapterId, changes.put.map(put => put.id)))
+  const gaveWay = await makeWay(tx, changes, touched)
   for (const put of changes.put) {
-    const clipsTouched = await writeChapter(tx, { sessionId, buildId: session.buildId, userId: hand.id }, put)
-    if (!clipsTouched) stale.push(put.id)
-    for (const clip of clipsTouched ?? []) touched.add(clip)
+    const written = await writeChapter(tx, { sessionId, buildId: session.buildId, userId: hand.id }, put)
+    if (!written) stale.push(put.id)
+    structural ||= written?.structural ?? false
+    for (const clip of written?.clips ?? []) touched.add(clip)
   }
   if (stale.length) {
     const current = (await listChapters(tx, { ids: stale })).filter(one => stale.includes(one.id))
@@ -80,29 +101,44 @@ async function applyChanges(tx: Transaction, sessionId: string, hand: ChapterHan
 
   for (const clipId of touched) await refreshPassages(tx, clipId)
   for (const one of [...changes.put, ...changes.remove]) await announce(tx, { sessionId, kind: 'chapter', id: one.id, by: hand.id })
-  return { chapters: changes.put.length ? await listChapters(tx, { ids: changes.put.map(put => put.id) }) : [], removed: changes.remove.map(one => one.id) }
+  return { chapters: changes.put.length ? await listChapters(tx, { ids: changes.put.map(put => put.id) }) : [], removed: changes.remove.map(one => one.id), structural, gaveWay }
+}
+
+/** The program's own goes where a person puts something else; it is proposed anew beside that. */
+async function makeWay(tx: Transaction, changes: ChapterChanges, touched: Set<string>): Promise<string[]> {
+  const named = changes.put.map(put => put.id)
+  const gone: string[] = []
+  for (const put of changes.put) {
+    const rows = await tx.delete(chapters).where(and(eq(chapters.clipId, put.clipId), chapters.proposed, notInArray(chapters.id, named), sql`int4range(${chapters.startMs}, ${chapters.endMs}) && int4range(${put.startMs}, ${put.endMs})`)).returning({ id: chapters.id })
+    if (rows.length) touched.add(put.clipId)
+    gone.push(...rows.map(row => row.id))
+  }
+  return gone
 }
 
 /** Writes one chapter; returns the clips it touched, or null when its version is no longer the newest. */
-async function writeChapter(tx: Transaction, context: { sessionId: string, buildId: string, userId: string }, put: ChapterPut): Promise<string[] | null> {
-  const { id, version, partIds, ...fields } = put
+async function writeChapter(tx: Transaction, context: { sessionId: string, buildId: string, userId: string }, put: ChapterPut): Promise<{ clips: string[], structural: boolean } | null> {
+  const { id, version, partIds, overProposal, ...fields } = put
   const values = { ...fields, confidence: put.inking === 'inked' ? null : put.confidence, updatedBy: context.userId }
-  let before: string | undefined
-  if (version === null) {
+  const [standing] = version === null ? [] : await tx.select({
+    clipId: chapters.clipId, startMs: chapters.startMs, endMs: chapters.endMs, stepId: chapters.stepId, operation: chapters.operation,
+    inking: chapters.inking, inkedBy: chapters.inkedBy, proposed: chapters.proposed, version: chapters.version,
+  }).from(chapters).where(and(eq(chapters.id, id), eq(chapters.sessionId, context.sessionId))).for('update')
+  // A proposal that the program has taken away meanwhile is made by the person who wants it.
+  if (version === null || (!standing && overProposal)) {
     const [row] = await tx.insert(chapters).values({ id, ...values, sessionId: context.sessionId, buildId: context.buildId, inkedBy: put.inking === 'inked' ? context.userId : null, createdBy: context.userId }).onConflictDoNothing({ target: chapters.id }).returning({ id: chapters.id })
     if (!row) return null
   }
   else {
-    const [old] = await tx.select({ clipId: chapters.clipId, inking: chapters.inking, inkedBy: chapters.inkedBy }).from(chapters).where(and(eq(chapters.id, id), eq(chapters.sessionId, context.sessionId), eq(chapters.version, version))).for('update')
-    if (!old) return null
-    before = old.clipId
+    if (!standing || (standing.version !== version && !standing.proposed)) return null
     // Ink stays the first hand's: the builder who trims a chapter of the crew's does not take it from them.
-    const inkedBy = put.inking === 'pencilled' ? null : old.inking === 'inked' ? old.inkedBy : context.userId
-    await tx.update(chapters).set({ ...values, inkedBy, version: version + 1 }).where(eq(chapters.id, id))
+    const inkedBy = put.inking === 'pencilled' ? null : standing.inking === 'inked' ? standing.inkedBy : context.userId
+    await tx.update(chapters).set({ ...values, inkedBy, version: standing.version + 1 }).where(eq(chapters.id, id))
     await tx.delete(chapterParts).where(eq(chapterParts.chapterId, id))
   }
   if (partIds.length) await tx.insert(chapterParts).values([...new Set(partIds)].map(partId => ({ chapterId: id, partId })))
-  return [put.clipId, ...(before ? [before] : [])]
+  const structural = !standing || (['clipId', 'startMs', 'endMs', 'stepId', 'operation', 'inking', 'proposed'] as const).some(key => standing[key] !== put[key])
+  return { clips: [put.clipId, ...(standing ? [standing.clipId] : [])], structural }
 }
 
 /** Locks what is to be changed, so that nobody inks it between this look and the change. */

@@ -7,6 +7,7 @@ import type { Database, Executor, Transaction } from '../database/client'
 import { captionTracks, type Clip, clips, cues, sessions, uploads } from '../database/schema'
 import { announce } from './live'
 import { clipPrefix, trackPrefix } from './objectKeys'
+import { enqueuePencilling } from './pencil/queue'
 
 /** Changes what a person may change of a clip; every change of time lays the session's clips out again. */
 export async function updateClip(database: Database, clipId: string, userId: string, changes: ClipChanges): Promise<void> {
@@ -22,7 +23,11 @@ export async function updateClip(database: Database, clipId: string, userId: str
       await alignSession(tx, clip.sessionId)
       await tx.update(clips).set(changes.offsetMs === null ? { offsetByHand: false } : { offsetByHand: true, offsetMs: changes.offsetMs }).where(eq(clips.id, clipId))
     }
-    if (changes.recordedAt !== undefined || changes.offsetMs !== undefined) await alignSession(tx, clip.sessionId)
+    if (changes.recordedAt !== undefined || changes.offsetMs !== undefined) {
+      await alignSession(tx, clip.sessionId)
+      // What was filmed first may have changed, and with it what follows on what.
+      await enqueuePencilling(tx, clip.sessionId)
+    }
     await announce(tx, { sessionId: clip.sessionId, kind: 'clip', id: clipId, by: userId })
   })
 }

@@ -7,6 +7,7 @@ import { writeSrt, writeVtt } from '#server/indexing/captions/writeCaptions'
 import type { Database, Executor } from '../database/client'
 import { type CaptionTrack, captionTracks, type CueRow, cues } from '../database/schema'
 import { announce } from './live'
+import { enqueuePencilling } from './pencil/queue'
 import { refreshPassages } from './search/passages'
 
 /** All captions of a session that are paired with a clip, clip by clip in time order. */
@@ -35,6 +36,7 @@ export async function updateCue(database: Database, cueId: string, userId: strin
     const originalText = changes.text === original ? null : original
     const [changed] = await tx.update(cues).set({ text: changes.text, originalText, version: cue.version + 1 }).where(eq(cues.id, cueId)).returning()
     await refreshPassages(tx, cue.clipId)
+    await enqueuePencilling(tx, sessionId)
     await announce(tx, { sessionId, kind: 'captions', id: cue.trackId, by: userId })
     return toView(changed!)
   })

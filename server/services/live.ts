@@ -5,7 +5,8 @@ import type { Executor } from '../database/client'
 /** Something in a session changed; pages that show it read it again. Small: NOTIFY carries 8 kB at most. */
 export interface LiveEvent {
   sessionId: string
-  kind: 'clip' | 'task' | 'chapter' | 'captions' | 'session'
+  /** `pencil`: the program has changed what it proposes, chapters, facts and pick-ups alike. */
+  kind: 'clip' | 'task' | 'chapter' | 'captions' | 'session' | 'pencil' | 'fact' | 'pickup'
   /** The clip, chapter or track that changed. */
   id: string
   /** For tasks: what the page shows without reading anything again. */

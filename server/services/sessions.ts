@@ -4,12 +4,13 @@ import type { SessionDetail, SessionSummary, TrackView } from '#shared/types/ses
 import { DomainError, notFound } from '#shared/utils/errors'
 import { addJob } from '../adapters/queue'
 import type { Database, Executor, Transaction } from '../database/client'
-import { captionTracks, clips, clipTasks, sessions, sessionSteps, steps } from '../database/schema'
+import { captionTracks, clips, clipTasks, pencillings, sessions, sessionSteps, steps } from '../database/schema'
 import type { BuildAccess } from './access'
 import { dropClip } from './clips'
 import { toClipView } from './clipView'
 import { announce } from './live'
 import { trackPrefix } from './objectKeys'
+import { enqueuePencilling } from './pencil/queue'
 
 /** A build's sessions, newest first, with what each holds. */
 export async function listSessions(executor: Executor, buildId: string): Promise<SessionSummary[]> {
@@ -51,6 +52,7 @@ export async function updateSession(database: Database, sessionId: string, userI
     if (stepIds) {
       await tx.delete(sessionSteps).where(eq(sessionSteps.sessionId, sessionId))
       await tickSteps(tx, session.buildId, sessionId, stepIds)
+      await enqueuePencilling(tx, sessionId)
     }
     await announce(tx, { sessionId, kind: 'session', id: sessionId, by: userId })
   })
@@ -84,11 +86,12 @@ export async function deleteSession(database: Database, sessionId: string, userI
 export async function readSession(executor: Executor, sessionId: string, { build, role }: BuildAccess): Promise<SessionDetail> {
   const [session] = await executor.select().from(sessions).where(eq(sessions.id, sessionId))
   if (!session || !role) throw notFound('That session')
-  const [ticked, clipRows, taskRows, tracks] = await Promise.all([
+  const [ticked, clipRows, taskRows, tracks, [pencilling]] = await Promise.all([
     executor.select({ stepId: sessionSteps.stepId }).from(sessionSteps).innerJoin(steps, eq(steps.id, sessionSteps.stepId)).where(eq(sessionSteps.sessionId, sessionId)).orderBy(asc(steps.position)),
     executor.select().from(clips).where(eq(clips.sessionId, sessionId)).orderBy(asc(clips.offsetMs), asc(clips.name)),
     executor.select({ row: clipTasks }).from(clipTasks).innerJoin(clips, eq(clips.id, clipTasks.clipId)).where(eq(clips.sessionId, sessionId)),
     listTracks(executor, sessionId),
+    executor.select({ state: pencillings.state, message: pencillings.message }).from(pencillings).where(eq(pencillings.sessionId, sessionId)),
   ])
   const { id, date, title, place, temperatureC, humidityPercent, notes } = session
   return {
@@ -97,6 +100,7 @@ export async function readSession(executor: Executor, sessionId: string, { build
     stepIds: ticked.map(row => row.stepId),
     clips: clipRows.map(clip => toClipView(clip, taskRows.flatMap(({ row }) => row.clipId === clip.id ? [row] : []))),
     tracks,
+    pencilling: pencilling ?? null,
   }
 }
 

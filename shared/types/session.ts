@@ -17,6 +17,8 @@ export interface SessionDetail {
   stepIds: string[]
   clips: ClipView[]
   tracks: TrackView[]
+  /** How far the program is with pencilling; null until it has something to listen to. */
+  pencilling: { state: TaskState, message: string } | null
 }
 
 export interface ClipView {
@@ -79,6 +81,10 @@ export interface ChapterView {
   inking: Inking
   confidence: number | null
   evidence: { atMs: number, words: string }[]
+  /** What else it may show, likeliest first. */
+  alternatives: { steps: { stepId: string | null, confidence: number }[], operations: { operation: Operation, confidence: number }[] }
+  /** The program's own, which it may move and take away. */
+  proposed: boolean
   note: string
   version: number
   /** Who inked it; null while it is pencilled. */

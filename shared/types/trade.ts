@@ -30,5 +30,16 @@ export type RecordedAtSource = typeof RECORDED_AT_SOURCES[number]
 export const CLIP_TASKS = ['probe-clip', 'index-footage', 'make-proxy', 'read-captions'] as const
 export type ClipTask = typeof CLIP_TASKS[number]
 
+/** Kinds of what is said to measure, mix or count; as server/indexing/facts hears them. */
+export const FACT_KINDS = ['length', 'angle', 'thickness', 'ratio', 'time', 'count', 'temperature', 'adhesive', 'fastener'] as const
+export type FactKind = typeof FACT_KINDS[number]
+/** Millimetres, degrees, minutes, pieces, °C, or a bare ratio. */
+export const FACT_UNITS = ['mm', 'deg', 'min', 'count', 'C', 'ratio'] as const
+export type FactUnit = typeof FACT_UNITS[number]
+
+/** A pick-up is still to be filmed, filmed, or not wanted. */
+export const PICKUP_STATES = ['open', 'done', 'dismissed'] as const
+export type PickupState = typeof PICKUP_STATES[number]
+
 export const TASK_STATES = ['waiting', 'working', 'done', 'failed'] as const
 export type TaskState = typeof TASK_STATES[number]

@@ -2,6 +2,7 @@ import { join } from 'node:path'
 import { eq } from 'drizzle-orm'
 import { clips } from '#server/database/schema'
 import { clipPrefix } from '#server/services/objectKeys'
+import { enqueuePencilling } from '#server/services/pencil/queue'
 import type { FootageIndex, ProbeResult } from '#shared/types/media'
 import { clipJob, type ClipWork } from './clipJob'
 import { clipFault } from './ffmpeg/faults'
@@ -29,6 +30,8 @@ export const indexFootage = clipJob('index-footage', async (given) => {
     const footage = await storeIndex(given, outDir, local)
     return async (tx) => {
       await tx.update(clips).set({ footage }).where(eq(clips.id, clip.id))
+      // Where the picture changes a chapter may begin.
+      if (footage.sceneChangesMs.length) await enqueuePencilling(tx, clip.sessionId)
     }
   }))
 })

@@ -6,6 +6,7 @@ import { checkAgainstClip, cuesForStorage } from '#server/indexing/captions/orde
 import { readCaptions as read } from '#server/indexing/captions/readCaptions'
 import { setTask } from '#server/services/clipTasks'
 import { announce } from '#server/services/live'
+import { enqueuePencilling } from '#server/services/pencil/queue'
 import { refreshPassages } from '#server/services/search/passages'
 import type { CaptionReading, Cue } from '#shared/types/captions'
 import { DomainError } from '#shared/utils/errors'
@@ -63,6 +64,7 @@ async function keep(tx: Transaction, trackId: string, result: CaptionReading | s
     const durationMs = await durationOf(tx, track)
     const doubt = durationMs === null ? null : checkAgainstClip(list, durationMs)
     if (track.clipId) await insertCues(tx, track, track.clipId, list)
+    if (track.clipId) await enqueuePencilling(tx, track.sessionId)
     await tx.update(captionTracks).set({ failure: null, doubt, warnings, read: track.clipId !== null }).where(eq(captionTracks.id, trackId))
   }
   if (track.clipId) await settle(tx, track.clipId, track.sessionId)

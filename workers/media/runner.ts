@@ -10,12 +10,14 @@ import { probeClip } from './probeClip'
 import { pruneStorage } from './pruneStorage'
 import { readCaptions } from './readCaptions'
 import { removeObjects } from './removeObjects'
+import { suggestChapters } from './suggestChapters'
 
 const TASKS = {
   'probe-clip': probeClip,
   'index-footage': indexFootage,
   'make-proxy': makeProxy,
   'read-captions': readCaptions,
+  'suggest-chapters': suggestChapters,
   'remove-objects': removeObjects,
   'prune-storage': pruneStorage,
 }

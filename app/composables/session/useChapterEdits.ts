@@ -6,6 +6,7 @@ import { apply, type Edit } from '#shared/utils/chapters/edits'
 import { alreadyDone, type Changed, cuttingBack, overTheirs } from '#shared/utils/chapters/conflicts'
 import { asChanges, doneWith, type Done, merge, onTopOf, type Outcome, restamp, takeBack, touchedBy } from '#shared/utils/chapters/history'
 import { forbiddenIn, forbiddenWords, type Hand, mayChange } from '#shared/utils/chapters/rights'
+import { realignedWords } from '#shared/utils/chapters/realigned'
 import { changeWords, chapterName } from '#shared/utils/chapters/words'
 
 type Kind = 'do' | 'undo' | 'redo'
@@ -75,7 +76,10 @@ export function useChapterEdits({ sessionId, me, steps, say }: Input) {
 
   function settle(one: Waiting, before: ChapterView[], outcome: Outcome): void {
     settled++
-    data.value = { chapters: merge(base.value, outcome) }
+    const stood = base.value
+    data.value = { chapters: merge(stood, outcome) }
+    // Held against the chapters with the edit in them: what the person did is not told them again.
+    tellRealigned(merge(stood, { ...outcome, realigned: null }), base.value)
     queue.value = queue.value.filter(other => other !== one).map(other => ({ ...other, edit: onTopOf(other.edit, one.edit, outcome) }))
     const done = doneWith(one.edit, before, outcome)
     if (one.kind === 'do') {
@@ -91,6 +95,14 @@ export function useChapterEdits({ sessionId, me, steps, say }: Input) {
       undoable.value = [...undoable.value, done]
     }
     one.answer(true)
+  }
+
+  /** Says what the program now proposes otherwise. */
+  function tellRealigned(before: readonly ChapterView[], after: readonly ChapterView[]): void {
+    const words = realignedWords(before, after, steps())
+    if (!words) return
+    news.value = `Aligned anew: ${words}.`
+    say(`${words}.`)
   }
 
   function drop(one: Waiting): void {
@@ -184,10 +196,14 @@ export function useChapterEdits({ sessionId, me, steps, say }: Input) {
       if (at !== settled) return void rereadSoon()
       const words = changeWords(base.value, fresh.chapters, heard, steps())
       heard.clear()
+      const stood = base.value
       data.value = fresh
       if (words) {
         news.value = words
         say(words)
+      }
+      else {
+        tellRealigned(stood, fresh.chapters)
       }
     }
     catch {

@@ -18,7 +18,7 @@ export function useSessionPage(buildId: string, sessionId: string) {
   const live = useLiveSession(() => sessionId, {
     onEvent: (event) => {
       if (event.kind === 'chapter') edits.hear(event)
-      if (event.kind === 'clip') void edits.rereadSoon()
+      if (event.kind === 'clip' || event.kind === 'pencil') void edits.rereadSoon()
       if (event.kind === 'captions' || (event.kind === 'task' && event.task?.task === 'read-captions' && event.task.state === 'done')) void captions.reread()
     },
     onGap: () => {

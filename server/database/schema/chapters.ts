@@ -1,6 +1,6 @@
 import { sql } from 'drizzle-orm'
-import { check, index, integer, jsonb, pgEnum, pgTable, primaryKey, real, text, uuid } from 'drizzle-orm/pg-core'
-import { INKINGS, OPERATIONS } from '#shared/types/trade'
+import { boolean, check, index, integer, jsonb, pgEnum, pgTable, primaryKey, real, text, uuid } from 'drizzle-orm/pg-core'
+import { INKINGS, type Operation, OPERATIONS } from '#shared/types/trade'
 import { builds } from './builds'
 import { clips } from './clips'
 import { id, timestamps } from './columns'
@@ -13,6 +13,12 @@ export const inkingEnum = pgEnum('inking', INKINGS)
 
 /** The words and times that decided a pencilled chapter. */
 export interface EvidenceWords { atMs: number, words: string }
+
+/** What else a chapter may show, likeliest first; a step of null says that it shows none. */
+export interface Alternatives {
+  steps: { stepId: string | null, confidence: number }[]
+  operations: { operation: Operation, confidence: number }[]
+}
 
 /**
  * A stretch of one clip, half open [startMs, endMs). Belongs to the clip, not to the session's clock,
@@ -32,6 +38,9 @@ export const chapters = pgTable('chapters', {
   /** 0 to 1 for pencilled chapters, null for inked ones. */
   confidence: real('confidence'),
   evidence: jsonb('evidence').$type<EvidenceWords[]>().notNull().default(sql`'[]'::jsonb`),
+  alternatives: jsonb('alternatives').$type<Alternatives>().notNull().default(sql`'{"steps":[],"operations":[]}'::jsonb`),
+  /** The program's own, touched by nobody: only these may it move, change and take away. */
+  proposed: boolean('proposed').notNull().default(false),
   note: text('note').notNull().default(''),
   /** Raised by every change; a change that names an older number is refused. */
   version: integer('version').notNull().default(1),
@@ -46,6 +55,7 @@ export const chapters = pgTable('chapters', {
   index('chapters_clip_start_index').on(table.clipId, table.startMs),
   check('chapters_times', sql`${table.startMs} >= 0 and ${table.endMs} > ${table.startMs}`),
   check('chapters_none_has_no_step', sql`${table.operation} <> 'none' or ${table.stepId} is null`),
+  check('chapters_proposed_is_pencilled', sql`not ${table.proposed} or ${table.inking} = 'pencilled'`),
   check('chapters_confidence_range', sql`${table.confidence} between 0 and 1`),
 ])
 

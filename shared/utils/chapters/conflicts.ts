@@ -13,7 +13,7 @@ export function overTheirs(edit: Edit, { current, gone }: Changed): Edit {
   const now = new Map(current.map(one => [one.id, one]))
   const lost = new Set(gone)
   return {
-    label: edit.label,
+    ...edit,
     put: edit.put.map(one => lost.has(one.id) ? { ...one, version: null } : { ...one, version: now.get(one.id)?.version ?? one.version }),
     remove: edit.remove.filter(one => !lost.has(one.id)).map(one => now.get(one.id) ?? one),
   }
@@ -47,5 +47,5 @@ export function cuttingBack(edit: Edit, inTheWay: ChapterView[], newId: () => st
     if (first) put.push(asPut(other, first), ...others.map(piece => asPut(other, { ...piece, id: newId(), version: null })))
     else remove.push(other)
   }
-  return { label: edit.label, put, remove }
+  return { ...edit, put, remove }
 }

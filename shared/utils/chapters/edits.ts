@@ -10,6 +10,8 @@ export interface Edit {
   label: string
   put: ChapterPut[]
   remove: ChapterView[]
+  /** What is removed is not to be proposed again; `takes-back` is the edit that undoes such a one. */
+  dismissal?: 'says' | 'takes-back'
 }
 
 /** The shortest chapter that an edit may leave, ms: shorter ones cannot be seen or clicked. */
@@ -19,11 +21,11 @@ export type Tag = Pick<ChapterPut, 'stepId' | 'operation' | 'partIds'>
 
 export function asPut(view: ChapterView, changes: Partial<ChapterPut> = {}): ChapterPut {
   const { updatedBy: _updatedBy, inkedBy: _inkedBy, ...rest } = view
-  return { ...rest, ...changes }
+  return { ...rest, ...changes, overProposal: view.proposed }
 }
 
 /** A change by hand makes a chapter inked. */
-const inked = { inking: 'inked', confidence: null } as const
+const inked = { inking: 'inked', confidence: null, proposed: false } as const
 
 /**
  * Marks [startMs, endMs) of a clip as a new inked chapter. What was there gives way: chapters wholly inside go,
@@ -31,7 +33,7 @@ const inked = { inking: 'inked', confidence: null } as const
  */
 export function mark(chapters: ChapterView[], clipId: string, startMs: number, endMs: number, tag: Tag, newId: () => string, note = ''): Edit {
   const { put, remove } = makeRoom(chapters, clipId, startMs, endMs, newId)
-  return { label: 'Mark chapter', put: [...put, { id: newId(), clipId, startMs, endMs, ...tag, ...inked, evidence: [], note, version: null }], remove }
+  return { label: 'Mark chapter', put: [...put, { id: newId(), clipId, startMs, endMs, ...tag, ...inked, evidence: [], alternatives: { steps: [], operations: [] }, overProposal: false, note, version: null }], remove }
 }
 
 /** The inked chapters that marking [startMs, endMs) would cut: worth a question before it happens. */
@@ -64,10 +66,10 @@ export function ink(chapters: ChapterView[]): Edit {
   return { label: chapters.length === 1 ? 'Ink chapter' : `Ink ${chapters.length} chapters`, put: chapters.map(one => asPut(one, inked)), remove: [] }
 }
 
-/** Parts a chapter in two at atMs; null when either side would be too short. */
+/** Parts a chapter in two at atMs; null when either side would be too short. What was a proposal is now a person's pencil, which stays. */
 export function split(chapter: ChapterView, atMs: number, newId: () => string): Edit | null {
   if (atMs - chapter.startMs < SHORTEST_CHAPTER_MS || chapter.endMs - atMs < SHORTEST_CHAPTER_MS) return null
-  return { label: 'Split chapter', put: [asPut(chapter, { endMs: atMs }), asPut(chapter, { id: newId(), startMs: atMs, version: null })], remove: [] }
+  return { label: 'Split chapter', put: [asPut(chapter, { endMs: atMs, proposed: false }), asPut(chapter, { id: newId(), startMs: atMs, version: null, proposed: false })], remove: [] }
 }
 
 /** Joins a chapter with the next one of its clip (bridging a gap between them), keeping the first one's step and operation. */
@@ -79,7 +81,7 @@ export function join(chapters: ChapterView[], chapter: ChapterView): Edit | null
 }
 
 export function remove(chapter: ChapterView): Edit {
-  return { label: 'Delete chapter', put: [], remove: [chapter] }
+  return { label: 'Delete chapter', put: [], remove: [chapter], dismissal: 'says' }
 }
 
 /** What an edge may not push: the chapters that whoever moves it may not change. */
@@ -138,25 +140,42 @@ export function apply(chapters: readonly ChapterView[], edit: Pick<Edit, 'put' |
   const kept = chapters.filter(one => !gone.has(one.id)).map((one) => {
     const next = put.get(one.id)
     put.delete(one.id)
-    return next ? { ...one, ...next, version: one.version } : one
+    return next ? { ...one, ...asShown(next), version: one.version } : one
   })
-  const fresh = [...put.values()].map(one => ({ ...one, version: one.version ?? 0, inkedBy: null, updatedBy: null }))
-  return [...kept, ...fresh].sort((a, b) => a.clipId.localeCompare(b.clipId) || a.startMs - b.startMs)
+  const fresh = [...put.values()].map(one => ({ ...asShown(one), version: one.version ?? 0, inkedBy: null, updatedBy: null }))
+  return givingWay([...kept, ...fresh], edit.put).sort((a, b) => a.clipId.localeCompare(b.clipId) || a.startMs - b.startMs)
+}
+
+function asShown({ overProposal: _, ...put }: ChapterPut) {
+  return put
+}
+
+/** The program's own gives way to what a person puts, as it does on the server, and is proposed anew beside it. */
+function givingWay(chapters: ChapterView[], puts: readonly ChapterPut[]): ChapterView[] {
+  const ids = new Set(puts.map(put => put.id))
+  return chapters.filter(one => !one.proposed || ids.has(one.id) || !puts.some(put => put.clipId === one.clipId && put.startMs < one.endMs && put.endMs > one.startMs))
 }
 
 /**
  * The edit that takes `edit` back, given the chapters before it and as they are now (for their versions).
- * Null when somebody has since changed one of them: undoing would overwrite their work.
+ * Null when somebody has since changed one of them: undoing would overwrite their work. What was and is the program's
+ * own is nobody's work: where it has moved since, it stays as it is and is proposed anew around what is undone.
  */
 export function inverse(edit: Edit, before: ChapterView[], now: ChapterView[], versionsAfter: Map<string, number>): Edit | null {
   const put: ChapterPut[] = edit.remove.map(one => asPut(one, { version: null }))
   const remove: ChapterView[] = []
   for (const changed of edit.put) {
     const current = now.find(one => one.id === changed.id)
-    if (!current || current.version !== versionsAfter.get(changed.id)) return null
     const old = before.find(one => one.id === changed.id)
+    const moved = !current || current.version !== versionsAfter.get(changed.id)
+    if (moved && changed.proposed && (!current || current.proposed)) {
+      if (current && !old) remove.push(current)
+      continue
+    }
+    if (moved) return null
     if (old) put.push(asPut(old, { version: current.version }))
     else remove.push(current)
   }
-  return { label: edit.label, put, remove }
+  const dismissal = edit.dismissal === 'says' ? 'takes-back' as const : edit.dismissal === 'takes-back' ? 'says' as const : undefined
+  return { label: edit.label, put, remove, ...(dismissal ? { dismissal } : {}) }
 }

@@ -5,11 +5,16 @@ import { type Edit, inverse } from './edits'
 /** An edit that the server has taken: how its chapters were before, and their versions since. */
 export interface Done { edit: Edit, before: ChapterView[], after: Map<string, number> }
 
-export interface Outcome { chapters: ChapterView[], removed: string[] }
+export interface Outcome {
+  chapters: ChapterView[]
+  removed: string[]
+  /** What the program has since proposed around it; null when it does so later. */
+  realigned?: { chapters: ChapterView[], removed: string[] } | null
+}
 
 /** What travels to the server. A chapter that is new in the page carries no version there. */
 export function asChanges(edit: Edit): ChapterChanges {
-  return { put: edit.put, remove: edit.remove.map(({ id, version }) => ({ id, version })) }
+  return { put: edit.put, remove: edit.remove.map(({ id, version, proposed }) => ({ id, version, overProposal: proposed, dismiss: edit.dismissal === 'says' })) }
 }
 
 /** Chapters as they were before an edit: those that it changes or removes. */
@@ -24,8 +29,10 @@ export function doneWith(edit: Edit, before: ChapterView[], outcome: Outcome): D
 
 /** Chapters with the server's answer put in, in clip and time order. */
 export function merge(chapters: ChapterView[], outcome: Outcome): ChapterView[] {
-  const replaced = new Set([...outcome.removed, ...outcome.chapters.map(one => one.id)])
-  return [...chapters.filter(one => !replaced.has(one.id)), ...outcome.chapters]
+  // A proposal that was changed by hand may since have moved again: the later word counts.
+  const fresh = new Map([...outcome.chapters, ...outcome.realigned?.chapters ?? []].map(one => [one.id, one]))
+  const gone = new Set([...outcome.removed, ...outcome.realigned?.removed ?? []])
+  return [...chapters.filter(one => !fresh.has(one.id)), ...fresh.values()].filter(one => !gone.has(one.id))
     .sort((a, b) => a.clipId.localeCompare(b.clipId) || a.startMs - b.startMs)
 }
 
@@ -35,7 +42,7 @@ export function onTopOf(edit: Edit, sent: Edit, outcome: Outcome): Edit {
   const named = new Map(sent.put.map(one => [one.id, one.version ?? 0]))
   const stamp = <One extends { id: string, version: number | null }>(one: One): One =>
     given.has(one.id) && (one.version ?? 0) === named.get(one.id) ? { ...one, version: given.get(one.id)! } : one
-  return { label: edit.label, put: edit.put.map(stamp), remove: edit.remove.map(stamp) }
+  return { ...edit, put: edit.put.map(stamp), remove: edit.remove.map(stamp) }
 }
 
 /** The edit that takes a done one back; null when somebody has changed one of its chapters since. */

@@ -12,7 +12,7 @@ export const steps: StepView[] = [[3, 'Cut the transom'], [7, 'Glue the transom'
 }))
 
 const chapter = (id: string, over: Partial<ChapterView>): ChapterView => ({
-  id, clipId: 'clip0', startMs: 0, endMs: 1, stepId: null, operation: 'none', partIds: [], inking: 'inked', confidence: null, evidence: [], note: '', version: 1, inkedBy: null, updatedBy: null, ...over,
+  id, clipId: 'clip0', startMs: 0, endMs: 1, stepId: null, operation: 'none', partIds: [], inking: 'inked', confidence: null, evidence: [], alternatives: { steps: [], operations: [] }, proposed: false, note: '', version: 1, inkedBy: null, updatedBy: null, ...over,
 })
 export const chapters: ChapterView[] = [
   chapter('a', { startMs: 5000, endMs: 20_000, stepId: 'step3', operation: 'cut' }),

@@ -82,7 +82,7 @@ function makeChapters(clipId: string, length: number, count: number, random: () 
     return {
       id: `${clipId}-chapter${index}`, clipId, startMs, endMs: random() < 0.2 ? Math.round(startMs + (next - startMs) * 0.8) : next,
       stepId: isNone ? null : `step${Math.floor(random() * steps.length)}`, operation: isNone ? 'none' : OPERATIONS[Math.floor(random() * 14)]!, partIds: [],
-      inking: inked ? 'inked' : 'pencilled', confidence: inked ? null : 0.25 + random() * 0.75, evidence: [], note: '', version: 1, inkedBy: null, updatedBy: null,
+      inking: inked ? 'inked' : 'pencilled', confidence: inked ? null : 0.25 + random() * 0.75, evidence: [], alternatives: { steps: [], operations: [] }, proposed: false, note: '', version: 1, inkedBy: null, updatedBy: null,
     }
   })
 }

@@ -8,7 +8,7 @@ import type { StepView } from '#shared/types/plan'
 let serial = 0
 const newId = () => `new-${++serial}`
 const chapter = (id: string, startMs: number, endMs: number, more: Partial<ChapterView> = {}): ChapterView => ({
-  id, clipId: 'clip', startMs, endMs, stepId: 'step', operation: 'glue', partIds: [], inking: 'inked', confidence: null, evidence: [], note: '', version: 1, inkedBy: null, updatedBy: null, ...more,
+  id, clipId: 'clip', startMs, endMs, stepId: 'step', operation: 'glue', partIds: [], inking: 'inked', confidence: null, evidence: [], alternatives: { steps: [], operations: [] }, proposed: false, note: '', version: 1, inkedBy: null, updatedBy: null, ...more,
 })
 
 describe('mine over theirs', () => {

@@ -6,7 +6,7 @@ import { apply, edgeRange, inkedInTheWay, inverse, join, mark, moveEdge, retag, 
 let serial = 0
 const newId = () => `new-${++serial}`
 const chapter = (id: string, startMs: number, endMs: number, more: Partial<ChapterView> = {}): ChapterView => ({
-  id, clipId: 'clip', startMs, endMs, stepId: 'step', operation: 'glue', partIds: [], inking: 'inked', confidence: null, evidence: [], note: '', version: 1, inkedBy: null, updatedBy: null, ...more,
+  id, clipId: 'clip', startMs, endMs, stepId: 'step', operation: 'glue', partIds: [], inking: 'inked', confidence: null, evidence: [], alternatives: { steps: [], operations: [] }, proposed: false, note: '', version: 1, inkedBy: null, updatedBy: null, ...more,
 })
 const tag = { stepId: 'other', operation: 'fasten' as const, partIds: [] }
 const spans = (chapters: ChapterView[]) => chapters.map(one => [one.startMs, one.endMs])

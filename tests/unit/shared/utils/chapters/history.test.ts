@@ -8,7 +8,7 @@ const CLIP_MS = 60_000
 let serial = 0
 const newId = () => `new-${++serial}`
 const chapter = (id: string, startMs: number, endMs: number, more: Partial<ChapterView> = {}): ChapterView => ({
-  id, clipId: 'clip', startMs, endMs, stepId: 'step', operation: 'glue', partIds: [], inking: 'inked', confidence: null, evidence: [], note: '', version: 1, inkedBy: null, updatedBy: null, ...more,
+  id, clipId: 'clip', startMs, endMs, stepId: 'step', operation: 'glue', partIds: [], inking: 'inked', confidence: null, evidence: [], alternatives: { steps: [], operations: [] }, proposed: false, note: '', version: 1, inkedBy: null, updatedBy: null, ...more,
 })
 
 /** Takes edits as the server does: versions must match, and each write raises them. */
@@ -25,7 +25,8 @@ function createServer(start: ChapterView[]) {
       }
       const chapters = changes.put.map((put): ChapterView => {
         if ((now.get(put.id)?.version ?? null) !== put.version) throw new Error(`stale put of ${put.id}: ${put.version} on ${now.get(put.id)?.version}`)
-        const view = { ...put, version: (put.version ?? 0) + 1, inkedBy: null, updatedBy: 'me' }
+        const { overProposal: _, ...kept } = put
+        const view = { ...kept, version: (put.version ?? 0) + 1, inkedBy: null, updatedBy: 'me' }
         now.set(put.id, view)
         return view
       })

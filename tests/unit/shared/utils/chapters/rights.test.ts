@@ -3,7 +3,7 @@ import { forbiddenIn, forbiddenWords, mayChange } from '#shared/utils/chapters/r
 import type { ChapterView } from '#shared/types/session'
 
 const chapter = (id: string, more: Partial<ChapterView> = {}): ChapterView => ({
-  id, clipId: 'clip', startMs: 0, endMs: 1000, stepId: null, operation: 'glue', partIds: [], inking: 'inked', confidence: null, evidence: [], note: '', version: 1, inkedBy: null, updatedBy: null, ...more,
+  id, clipId: 'clip', startMs: 0, endMs: 1000, stepId: null, operation: 'glue', partIds: [], inking: 'inked', confidence: null, evidence: [], alternatives: { steps: [], operations: [] }, proposed: false, note: '', version: 1, inkedBy: null, updatedBy: null, ...more,
 })
 const own = chapter('own', { inkedBy: { id: 'me', name: 'Wren' } })
 const theirs = chapter('theirs', { inkedBy: { id: 'other', name: 'Maud' } })

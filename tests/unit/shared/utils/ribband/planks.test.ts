@@ -5,7 +5,7 @@ import type { ChapterView } from '#shared/types/session'
 import { ellipsis, fitLabel, plankOf, plankSpan, planksInSight, plankWords, type Measure } from '#shared/utils/ribband/planks'
 
 const chapter = (over: Partial<ChapterView> = {}): ChapterView => ({
-  id: 'ch', clipId: 'c', startMs: 5000, endMs: 65_000, stepId: 's', operation: 'glue', partIds: [], inking: 'inked', confidence: null, evidence: [], note: '', version: 1, inkedBy: null, updatedBy: null, ...over,
+  id: 'ch', clipId: 'c', startMs: 5000, endMs: 65_000, stepId: 's', operation: 'glue', partIds: [], inking: 'inked', confidence: null, evidence: [], alternatives: { steps: [], operations: [] }, proposed: false, note: '', version: 1, inkedBy: null, updatedBy: null, ...over,
 })
 const step: StepView = { id: 's', number: 7, position: 6, stage: 'Hull', title: 'Glue the transom', description: '', materials: [], partIds: [], status: 'to-do', plannedMinutes: null, spentMinutes: null, archived: false }
 const place = { lane: 0, clipLineMs: 100_000 }

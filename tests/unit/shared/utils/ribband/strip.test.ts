@@ -10,7 +10,7 @@ const clip = (id: string, offsetMs: number, durationMs: number | null, camera = 
 })
 const cue = (id: string, clipId: string, startMs: number, endMs: number): CueView => ({ id, trackId: 't', clipId, startMs, endMs, text: id, edited: false, original: null, version: 1 })
 const chapter = (id: string, clipId: string, startMs: number, endMs: number): ChapterView => ({
-  id, clipId, startMs, endMs, stepId: null, operation: 'cut', partIds: [], inking: 'inked', confidence: null, evidence: [], note: '', version: 1, inkedBy: null, updatedBy: null,
+  id, clipId, startMs, endMs, stepId: null, operation: 'cut', partIds: [], inking: 'inked', confidence: null, evidence: [], alternatives: { steps: [], operations: [] }, proposed: false, note: '', version: 1, inkedBy: null, updatedBy: null,
 })
 
 const footage = layFootage(
