@@ -1,7 +1,7 @@
 import { HEARD_COLUMNS } from './kindEvidence'
 import { KINDS, type Lattice, W } from './lattice'
 import { LONGEST_CHAPTER_S, type Material } from './material'
-import type { Weights } from './model'
+import { BY_JUDGEMENT, type Weights } from './model'
 import { STEP_FEATURES } from './stepEvidence'
 import { TURN_FEATURES } from './turns'
 import { WORK_KINDS } from './types'
@@ -116,7 +116,8 @@ function aliveSteps(material: Material, sums: Float64Array): Uint8Array {
 }
 
 /** The scores of a session under given weights; `startsOn` is the step worked on before it, 1-based, 0 for none. */
-export function latticeOf(material: Material, weights: Weights, startsOn = 0): Lattice {
+export function latticeOf(material: Material, fitted: Weights, startsOn = 0): Lattice {
+  const weights = { ...fitted, ...BY_JUDGEMENT }
   const { S, speech, nodes, fixed } = material
   const n = speech.cues.length
   const stepWeights = STEP_FEATURES.map(name => weights[`step.${name}`] ?? 0)

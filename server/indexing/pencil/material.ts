@@ -99,7 +99,7 @@ function nodesOf(speech: Speech, turns: Float32Array, fixed: FixedStretch[]): nu
   const forced = new Set([0, n, ...fixed.flatMap(({ from, to }) => [from, to]), ...speech.cues.flatMap((cue, i) => cue.first ? [i] : [])])
   const likely = (i: number) => {
     const f = (name: typeof TURN_FEATURES[number]) => turns[i * KT + TURN_FEATURES.indexOf(name)]!
-    return 2 * f('okay') + 1.5 * f('so') + 1.2 * f('next') + 0.8 * f('while') + 0.8 * f('here') + 1.5 * f('gap') + 2 * f('pause') + f('sound') + 0.8 * f('sentence') - f('dangling') - 0.7 * f('because') - f('midSentence') + f('newWords')
+    return 2 * f('okay') + 1.5 * f('so') + 1.2 * f('next') + 0.8 * f('while') + 0.8 * f('here') + 1.5 * f('gap') + 2 * f('pause') + f('sound') + f('scene') + 0.8 * f('sentence') - f('dangling') - 0.7 * f('because') - f('midSentence') + f('newWords')
   }
   const nodes: number[] = []
   const inside = (i: number) => fixed.some(({ from, to }) => i > from && i < to)

@@ -24,5 +24,12 @@ export const WEIGHT_NAMES = [
   ...WORK_KINDS.map(kind => `begins.${kind}`),
   'to.none', 'to.steplessPlanTalk', 'to.steplessCleanUp', 'stepless.again',
 ] as const
+/**
+ * What the labelled sessions cannot teach, because they are captions without footage and hardly come back to a
+ * step: set by judgement. A change of picture speaks for a turn about as much as "okay" does; the builder's own
+ * earlier words for a step count about as much as the plan's.
+ */
+export const BY_JUDGEMENT: Weights = { 'turn.scene': 0.8, 'step.learned': 0.25 }
+
 export type WeightName = typeof WEIGHT_NAMES[number]
 export type Weights = Record<string, number>

@@ -1,4 +1,5 @@
 import { isStopWord, tokenise } from '../words/tokenise'
+import { evenCues } from './evenCues'
 import type { SpokenClip } from './types'
 
 /** A word as heard: where and when. */
@@ -18,6 +19,8 @@ export interface HeardCue {
   sound: boolean
   /** True for the first cue of a clip. */
   first: boolean
+  /** True when the picture changes about where it starts. */
+  scene: boolean
 }
 
 export interface Speech { cues: HeardCue[], words: HeardWord[], stems: string[], /** True when captions carry full stops. */ punctuated: boolean }
@@ -38,7 +41,7 @@ export function listen(clips: readonly SpokenClip[]): Speech {
     let silentFrom = 0
     let sound = false
     let first = true
-    for (const cue of clip.cues) {
+    for (const cue of evenCues(clip.cues)) {
       const text = cue.text.replace(SOUND, ' ').replace(/<[^>]*>/g, ' ').replace(/\s+/g, ' ').trim()
       const tokens = tokenise(text)
       if (!tokens.length) {
@@ -58,7 +61,7 @@ export function listen(clips: readonly SpokenClip[]): Speech {
         })
         speech.stems.push(token.stem)
       }
-      speech.cues.push({ clip: clipAt, startMs: cue.startMs, endMs: cue.endMs, text, from, to: speech.words.length, gapMs: Math.max(0, cue.startMs - silentFrom), sound, first })
+      speech.cues.push({ clip: clipAt, startMs: cue.startMs, endMs: cue.endMs, text, from, to: speech.words.length, gapMs: Math.max(0, cue.startMs - silentFrom), sound, first, scene: !first && changes(clip.sceneChangesMs, silentFrom, cue.startMs) })
       silentFrom = Math.max(silentFrom, cue.endMs)
       sound = false
       first = false
@@ -66,6 +69,13 @@ export function listen(clips: readonly SpokenClip[]): Speech {
   })
   speech.punctuated = stops > speech.cues.length / 20
   return speech
+}
+
+/** How far from the silence before a cue a change of picture still goes with it, ms. */
+const NEAR_MS = 1200
+
+function changes(scenes: readonly number[] | undefined, fromMs: number, toMs: number): boolean {
+  return scenes?.some(ms => ms >= fromMs - NEAR_MS && ms <= toMs + NEAR_MS) ?? false
 }
 
 function otherTimes(text: string): boolean {

@@ -1,3 +1,4 @@
+import { evenCues } from './evenCues'
 import type { SpokenClip } from './types'
 
 /** A place where the speaker says that something was done off camera. */
@@ -48,9 +49,10 @@ const NEAR_MS = 14_000
  * the words start.
  */
 export function hearTold(clips: readonly SpokenClip[]): ToldPlace[] {
-  const places: (ToldPlace & { sure: boolean })[] = []
+  const places: ToldPlace[] = []
+  let lastSeen = 0
   clips.forEach((clip, at) => {
-    const cues = clip.cues.map(cue => ({ ...cue, plain: cue.text.replace(/[[(♪][^\])♪]*[\])♪]|<[^>]*>/g, ' ').replace(/\s+/g, ' ').trim().toLowerCase().replaceAll('’', '\'') })).filter(cue => cue.plain)
+    const cues = evenCues(clip.cues).map(cue => ({ ...cue, plain: cue.text.replace(/[[(♪][^\])♪]*[\])♪]|<[^>]*>/g, ' ').replace(/\s+/g, ' ').trim().toLowerCase().replaceAll('’', '\'') })).filter(cue => cue.plain)
     cues.forEach((cue, i) => {
       const texts = [cue.plain, cues[i + 1]?.plain ?? '', cues[i + 2]?.plain ?? '']
       // A pause parts one thought from the next.
@@ -65,13 +67,11 @@ export function hearTold(clips: readonly SpokenClip[]): ToldPlace[] {
       const last = places.at(-1)
       if (last && last.clip === at && cue.startMs - lastSeen < NEAR_MS) {
         lastSeen = cue.startMs
-        last.sure ||= outright
         return
       }
       lastSeen = cue.startMs
-      places.push({ clip: at, atMs: cue.startMs, words: text.slice(0, 160), sure: outright })
+      places.push({ clip: at, atMs: cue.startMs, words: text.slice(0, 160) })
     })
   })
-  return places.map(({ clip, atMs, words }) => ({ clip, atMs, words }))
+  return places
 }
-let lastSeen = 0

@@ -2,7 +2,7 @@ import { isStopWord } from '../words/tokenise'
 import type { Speech } from './speech'
 
 /** What speaks for or against a new chapter at the start of a cue. */
-export const TURN_FEATURES = ['always', 'okay', 'so', 'next', 'while', 'here', 'gap', 'pause', 'longSilence', 'sound', 'sentence', 'midSentence', 'dangling', 'newWords', 'because'] as const
+export const TURN_FEATURES = ['always', 'okay', 'so', 'next', 'while', 'here', 'gap', 'pause', 'longSilence', 'sound', 'sentence', 'midSentence', 'dangling', 'newWords', 'because', 'scene'] as const
 const K = TURN_FEATURES.length
 const F = Object.fromEntries(TURN_FEATURES.map((name, i) => [name, i])) as Record<typeof TURN_FEATURES[number], number>
 
@@ -36,6 +36,7 @@ export function hearTurns(speech: Speech): Float32Array {
     if (seconds > 4) out[at + F.pause] = 1
     if (seconds > 14) out[at + F.longSilence] = 1
     if (cue.sound) out[at + F.sound] = 1
+    if (cue.scene) out[at + F.scene] = 1
     const ends = /[.!?]["'”’]?$/.test(before.text.trim())
     if (speech.punctuated) out[at + (ends ? F.sentence : F.midSentence)] = 1
     const last = before.text.toLowerCase().trim().split(/\s+/).at(-1)!.replace(/[.,!?;:]+$/, '')
