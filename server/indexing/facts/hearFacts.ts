@@ -8,8 +8,8 @@ import type { FactKind, FactUnit, SpokenFact } from './types'
 const INCH = 25.4
 const UNITS: Record<string, { mm?: number, min?: number, imperial?: boolean }> = {
   'inch': { mm: INCH, imperial: true }, 'inches': { mm: INCH, imperial: true }, '"': { mm: INCH, imperial: true }, '″': { mm: INCH, imperial: true }, '”': { mm: INCH, imperial: true },
-  'foot': { mm: 12 * INCH, imperial: true }, 'feet': { mm: 12 * INCH, imperial: true }, 'ft': { mm: 12 * INCH, imperial: true }, '′': { mm: 12 * INCH, imperial: true },
-  'yard': { mm: 36 * INCH, imperial: true }, 'yards': { mm: 36 * INCH, imperial: true }, 'thou': { mm: INCH / 1000, imperial: true },
+  'foot': { mm: 12 * INCH, imperial: true }, 'feet': { mm: 12 * INCH, imperial: true }, 'ft': { mm: 12 * INCH, imperial: true }, '′': { mm: 12 * INCH, imperial: true }, '\'': { mm: 12 * INCH, imperial: true },
+  'yard': { mm: 36 * INCH, imperial: true }, 'yards': { mm: 36 * INCH, imperial: true }, 'thou': { mm: INCH / 1000, imperial: true }, 'thousandth': { mm: INCH / 1000, imperial: true }, 'thousandths': { mm: INCH / 1000, imperial: true },
   'mm': { mm: 1 }, 'mil': { mm: 1 }, 'mils': { mm: 1 }, 'mill': { mm: 1 }, 'mills': { mm: 1 }, 'millimeter': { mm: 1 }, 'millimeters': { mm: 1 }, 'millimetre': { mm: 1 }, 'millimetres': { mm: 1 },
   'cm': { mm: 10 }, 'centimeter': { mm: 10 }, 'centimeters': { mm: 10 }, 'centimetre': { mm: 10 }, 'centimetres': { mm: 10 },
   'm': { mm: 1000 }, 'meter': { mm: 1000 }, 'meters': { mm: 1000 }, 'metre': { mm: 1000 }, 'metres': { mm: 1000 },
@@ -133,7 +133,7 @@ function readGauge(heard: Heard, at: number): Found | null {
 /** "inch and a half", with nothing before it. */
 function readBareInchAndAHalf(heard: Heard, at: number): Found | null {
   const first = word(heard, at)
-  if (!/^(?:inch|foot|centimet(?:er|re)|met(?:er|re))$/.test(first)) return null
+  if (!/^(?:inch|foot|mill?|(?:milli|centi)?met(?:er|re))$/.test(first)) return null
   if (word(heard, at + 1) !== 'and') return null
   const more = readNumber(heard.tokens, at + 2)
   if (!more || more.form !== 'fraction') return null
@@ -141,7 +141,7 @@ function readBareInchAndAHalf(heard: Heard, at: number): Found | null {
 }
 
 function readAmount(heard: Heard, at: number): Found | null {
-  const number = readNumber(heard.tokens, at)
+  const number = readElided(heard, at) ?? readNumber(heard.tokens, at)
   if (!number) return null
   const before = word(heard, at - 1)
   // "one of two", money, "frame two", "number three": names and prices.
@@ -156,6 +156,18 @@ function readAmount(heard: Heard, at: number): Found | null {
   return readMeasured(heard, number) ?? readDegrees(heard, number) ?? readBareLength(heard, number) ?? readCount(heard, number) ?? (number.article ? null : { to: number.to })
 }
 
+/** "Two fifty mil", "eighteen twenty mil": a spoken 250 and 1820, unless fastenings follow, when they are so many of a size. */
+function readElided(heard: Heard, at: number): SpokenNumber | null {
+  const hundreds = readNumber(heard.tokens, at)
+  if (!hundreds || hundreds.article || hundreds.form !== 'whole' || hundreds.to !== at + 1 || heard.tokens[at]!.number || hundreds.value < 1 || hundreds.value === 10 || hundreds.value > 19) return null
+  const rest = readNumber(heard.tokens, at + 1)
+  if (!rest || rest.article || rest.form !== 'whole' || heard.tokens[at + 1]!.number || rest.value < 20 || rest.value > 99) return null
+  const unit = unitAfter(heard, rest.to)
+  if (unit?.unit.mm !== 1) return null
+  const after = [1, 2, 3].map(i => word(heard, unit.at + i))
+  return after.some(text => FASTENER.test(text) || COUNTED.test(text)) ? null : { ...rest, from: at, value: hundreds.value * 100 + rest.value }
+}
+
 /** The token index of a unit that belongs to a number ending before `to`, or null: "6 mil", "3⁄8 of an inch", "quarter-inch". */
 function unitAfter(heard: Heard, to: number): { at: number, unit: typeof UNITS[string] } | null {
   let at = to
@@ -166,6 +178,7 @@ function unitAfter(heard: Heard, to: number): { at: number, unit: typeof UNITS[s
   // A bare "m" or "in" is a word more often than a unit, unless it stands close by a figure.
   if (text === 'm' && heard.tokens[at]!.start - heard.tokens[at - 1]!.end > 1) return null
   const unit = UNITS[text]
+  if (unit && /^thousandths?$/.test(text) && word(heard, at + 1) === 'of' && word(heard, at + 3) === 'inch') at += 3
   return unit ? { at, unit } : null
 }
 
@@ -182,6 +195,8 @@ function readRatio(heard: Heard, number: SpokenNumber): Found | null {
   }
   const sign = word(heard, at)
   const glued = sign === ':' && text[at]!.start === text[at - 1]!.end
+  // "2:30", "at 1:15": clock times; a slope of 1:20 stands without "at".
+  if (glued && /^[0-5]\d$/.test(word(heard, at + 1)) && heard.tokens[at + 1]!.end - heard.tokens[at + 1]!.start === 2 && number.value <= 12 && (number.value > 1 || /^(?:at|by|until|till|about|around)$/.test(word(heard, number.from - 1)))) return { to: at + 2 }
   const inRatio = sign === 'in' && /^(?:one|1)$/.test(word(heard, at - 1))
   if (sign !== 'to' && !glued && !inRatio) {
     if (!parts && number.value === 50 && /^(?:50|fifty)$/.test(word(heard, word(heard, at) === '-' || word(heard, at) === '/' ? at + 1 : at))) {
@@ -226,16 +241,19 @@ function readPair(heard: Heard, number: SpokenNumber): Found | null {
   }
 }
 
-/** "Six or seven strokes", "three to four inches", "an inch or two", "ten, fifteen minutes": nobody measured. */
+/** "Six or seven strokes", "three to four inches", "between 2 and 3 mil", "an inch or two", "ten, fifteen minutes": nobody measured. */
 function readRange(heard: Heard, number: SpokenNumber): Found | null {
   const own = unitAfter(heard, number.to)
   const at = own ? own.at + 1 : number.to
-  if (!/^(?:or|to|-|–)$/.test(word(heard, at))) return null
+  const between = word(heard, at) === 'and' && word(heard, number.from - 1) === 'between'
+  const comma = word(heard, at) === ',' && !own
+  if (!between && !comma && !/^(?:or|to|-|–)$/.test(word(heard, at))) return null
   if ((word(heard, at) === '-' || word(heard, at) === '–') && heard.tokens[at]!.start > heard.tokens[at - 1]!.end) return null
   if (word(heard, at) === 'or' && /^(?:so|two|thereabouts|more|less)$/.test(word(heard, at + 1))) return /^(?:so|more|less|thereabouts)$/.test(word(heard, at + 1)) ? null : { to: at + 2 }
   const other = readNumber(heard.tokens, at + 1)
   if (!other || other.article) return null
   const unit = unitAfter(heard, other.to)
+  if (comma && !(unit && number.form === 'whole' && other.form === 'whole' && other.value > number.value && other.value <= number.value * 2)) return null
   if (own && unit && unit.unit !== own.unit) return null
   if (own && !unit) return null
   if (own && unit && word(heard, at) === 'or') return null
@@ -258,7 +276,7 @@ function readMeasured(heard: Heard, number: SpokenNumber): Found | null {
     }
   }
   let total = value * (mm ?? min!)
-  if (mm && /^(?:foot|feet|ft|′)$/.test(word(heard, unit.at))) {
+  if (mm && /^(?:foot|feet|ft|′|')$/.test(word(heard, unit.at))) {
     const from = /^(?:and|,)$/.test(word(heard, to)) ? to + 1 : to
     const inches = readNumber(heard.tokens, from)
     if (inches && !inches.article && inches.value < 12) {
@@ -285,8 +303,8 @@ function readMeasured(heard: Heard, number: SpokenNumber): Found | null {
   }
   if (number.article && word(heard, unit.at) === 'foot' && to === unit.at + 1 && !DIMENSION.test(word(heard, to)) && !/^(?:every|by|than|over|under|about|nearly|only)$/.test(word(heard, number.from - 1))) return { to }
   if (number.article && /^(?:yard|yards)$/.test(word(heard, unit.at))) return { to }
-  if (number.article && unit.unit.mm === 1) return { to }
-  return { fact: fact(heard, number.from, to, lengthKind(heard, to, number.from), tenth(total), 'mm'), to }
+  if (number.article && unit.unit.mm === 1 && to === unit.at + 1) return { to }
+  return { fact: fact(heard, number.from, to, lengthKind(heard, to, number.from, total), unit.unit.mm! < 1 ? round2(total) : tenth(total), 'mm'), to }
 }
 
 /** Times that measure nothing in the work: "a minute ago", "two days a week", "give me a second". */
@@ -303,9 +321,13 @@ function around(heard: Heard, at: number, characters: number): string {
   return heard.lower.slice(Math.max(0, token.start - characters), token.end + characters)
 }
 
-function lengthKind(heard: Heard, to: number, from = to): FactKind {
+/** Boards and sheets are no thicker than this, mm: an "eight foot sheet" is that long. */
+const THICKEST = 150
+
+function lengthKind(heard: Heard, to: number, from = to, mm = 0): FactKind {
   const after = [word(heard, to), word(heard, to + 1)]
   if (after.some(text => FASTENER.test(text)) || (FASTENER.test(word(heard, from - 2)) && /^(?:long)$/.test(word(heard, to)))) return 'fastener'
+  if (mm > THICKEST) return 'length'
   return MATERIAL.test(after[0]!) || /^(?:thick)$/.test(after[1]!) ? 'thickness' : 'length'
 }
 
@@ -320,25 +342,34 @@ function readDegrees(heard: Heard, number: SpokenNumber): Found | null {
   const close = around(heard, number.from, 70)
   const clause = heard.lower.slice(Math.max(0, heard.tokens[number.from]!.start - 45), heard.tokens[at]!.end + 45)
   let celsius: number | null = null
-  if (/^(?:fahrenheit|f)$/.test(scale)) {
-    celsius = (number.value - 32) / 1.8
+  const minus = /^(?:minus|negative)$/.test(word(heard, number.from - 1))
+  const from = minus ? number.from - 1 : number.from
+  const value = minus ? -number.value : number.value
+  const below = word(heard, to) === 'below' && /^(?:freezing|zero)$/.test(word(heard, to + 1)) ? word(heard, to + 1) : null
+  if (below) {
+    const fahrenheit = heard.speaker.fahrenheit
+    celsius = fahrenheit ? ((below === 'zero' ? 0 : 32) - number.value - 32) / 1.8 : -number.value
+    to += 2
+  }
+  else if (/^(?:fahrenheit|f)$/.test(scale)) {
+    celsius = (value - 32) / 1.8
     to++
   }
   else if (/^(?:celsius|centigrade|c)$/.test(scale)) {
-    celsius = number.value
+    celsius = value
     to++
   }
-  else if (HEAT.test(clause) && (!ANGLE_WORDS.test(clause) || /\b(?:in here|in the (?:shed|shop|garage|barn|workshop)|heater|temperature|thermometer|warm|cold)\b/.test(clause)) && number.value !== 90 && number.value !== 45) celsius = plausibleCelsius(number.value, heard.speaker, close)
-  if (celsius !== null) return { fact: fact(heard, number.from, to, 'temperature', tenth(celsius), 'C'), to }
+  else if ((minus || HEAT.test(clause)) && (!ANGLE_WORDS.test(clause) || /\b(?:in here|in the (?:shed|shop|garage|barn|workshop)|heater|temperature|thermometer|warm|cold)\b/.test(clause)) && number.value !== 90 && number.value !== 45) celsius = plausibleCelsius(value, heard.speaker, close)
+  if (celsius !== null) return { fact: fact(heard, from, to, 'temperature', tenth(celsius), 'C'), to }
   if (number.value > 180) return { to }
   return { fact: fact(heard, number.from, to, 'angle', number.value, 'deg'), to }
 }
 
 /** What a number of degrees is in °C, by the speaker's habits and by what a shop can be: above 45 it is °F, below 33 it is °C, unless something is heated. */
 function plausibleCelsius(value: number, speaker: Speaker, close: string): number | null {
-  const heated = /\b(?:kettle|steam|boil|oven|heat gun|hot)\b/.test(close)
+  const heated = /\b(?:kettle|steam|boil|oven|heat gun|hot|cook|cooked|cooking|heated|warmed|warm it)\b/.test(close)
   if (speaker.fahrenheit) return value < 25 && !/below|freez/.test(close) ? value : (value - 32) / 1.8
-  if (value > 45 && !heated) return value <= 120 && speaker.inches ? (value - 32) / 1.8 : null
+  if (value > 45 && !heated) return value <= 120 && (speaker.inches || /\b(?:in here|in the (?:shed|shop|garage|barn|workshop|tent|room))\b/.test(close)) ? (value - 32) / 1.8 : null
   return value
 }
 

@@ -29,7 +29,7 @@ export function readNumber(tokens: readonly FactToken[], from: number): SpokenNu
     let to = whole.to + 1
     let digits = ''
     for (; SMALL[tokens[to]?.text ?? ''] !== undefined && SMALL[tokens[to]!.text]! < 10; to++) digits += SMALL[tokens[to]!.text]
-    if (!digits && tokens[to]?.number) digits = tokens[to++]!.text
+    if (!digits && /^\d+$/.test(tokens[to]?.text ?? '')) digits = tokens[to++]!.text
     if (digits) return { value: Number(`${whole.value}.${digits}`), from, to, form: 'whole', article: false, parts: 1 }
   }
   // "1 1⁄2", "2 and three eighths", "one and a half", "3-1/2"
@@ -84,14 +84,22 @@ export function readFraction(tokens: readonly FactToken[], from: number): { valu
 function readWhole(tokens: readonly FactToken[], from: number): { value: number, to: number, article: boolean } | null {
   const first = tokens[from]
   if (!first) return null
-  if (first.number) return { value: Number(first.text.replaceAll(',', '')), to: from + 1, article: false }
+  if (first.number) return inDozens(tokens, { value: Number(first.text.replaceAll(',', '')), to: from + 1, article: false })
   if (first.text === 'a' || first.text === 'an') {
     if (/^hundred$/.test(tokens[from + 1]?.text ?? '')) return spelled(tokens, from + 1, 1)
     if (tokens[from + 1]?.text === 'dozen') return { value: 12, to: from + 2, article: false }
     return { value: 1, to: from + 1, article: true }
   }
   if (first.text === 'half' && tokens[from + 1]?.text === 'a' && tokens[from + 2]?.text === 'dozen') return { value: 6, to: from + 3, article: false }
-  return spelled(tokens, from, 0)
+  // "Hundred and fifty mil": the "a" is often swallowed.
+  if (first.text === 'hundred') return spelled(tokens, from, 1)
+  const number = spelled(tokens, from, 0)
+  return number && inDozens(tokens, number)
+}
+
+/** "Two dozen" is 24. */
+function inDozens(tokens: readonly FactToken[], number: { value: number, to: number, article: boolean }): { value: number, to: number, article: boolean } {
+  return tokens[number.to]?.text === 'dozen' && Number.isInteger(number.value) ? { ...number, value: number.value * 12, to: number.to + 1 } : number
 }
 
 /** Spelled-out whole numbers to 9,999: "twenty five", "a hundred and ten", "eighteen hundred". */
