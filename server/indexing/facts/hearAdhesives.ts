@@ -7,8 +7,8 @@ const QUALITY = String.raw`(?:straight|neat|plain|unthickened|thickened|slow|fas
 const SOME = String.raw`(?:(?:a|the) (?:\w+ )?(?:bead|smear|dab|dollop|line|spot|blob) of )?`
 const WITH = String.raw`(?:\s+(?:with|and|plus|thickened with)\s+(?:(?:a|some|the|bit|little|pinch|lot|of|bunch|fine|fluffy|white|high|low|density|colloidal|stirred|fumed|milled|chopped|cotton|wood|sanding|phenolic|glass)\s+)*(?:flour|silica|microfibres?|microfibers?|micro ?balloons|fibres?|fibers?|dust|filler|powder|flock|cotton|talc|microspheres|balloons|thickener))*`
 /** What names a substance as the one in hand: "this is epoxy", "it's just yellow carpenter's glue", "I'm using the slow epoxy". */
-const STATED = new RegExp(String.raw`\b(?:this is|stuff is|that is|that's|it's|it is|is just|these are|they're|using|use|used|\w+ed (?:it |them |that )?(?:up |down |in |together )?with|they get|it gets|that gets|get|gets|goes in with|stick it with|stuck with|glued with|bonded with|go with|going with|i'm on|adhesive is|glue is|glue,? it's|bed it in|bedded in|bedding it in|bedded on|set in|stick it on with|stuck it on with|stuck it down with)\s+${SOME}((?:(?:the|a|an|our|my|this)\s+)?(?:${QUALITY},?\s+)*${NOUN}${WITH})\b`, 'gi')
-const NEGATED = /\b(?:not|no|old|isn't|never|without|instead of|rather than|don't|didn't)\b[^.,;]{0,14}$/i
+const STATED = new RegExp(String.raw`\b(?:this is|stuff is|that is|that's|it's|it is|is just|these are|they're|using|use|used|\w+ed (?:it |them |that )?(?:up |down |in |together )?with|having|they get|it gets|that gets|get|gets|goes in with|stick it with|stuck with|glued with|bonded with|go with|going with|i'm on|adhesive is|glue is|glue,? it's|bed it in|bedded in|bedding it in|bedded on|set in|stick it on with|stuck it on with|stuck it down with)\s+${SOME}((?:(?:the|a|an|our|my|this)\s+)?(?:${QUALITY},?\s+)*${NOUN}${WITH})\b`, 'gi')
+const NEGATED = /\b(?:not|never|don't|didn't|doesn't|won't|wouldn't|isn't|can't)\s+$/i
 
 /**
  * Glues, resins and sealants that are named as what is in use, each once in ten minutes. Value and unit are null:

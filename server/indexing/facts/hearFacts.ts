@@ -24,7 +24,7 @@ const DIMENSION = /^(?:wide|thick|long|deep|high|tall|across|apart|diameter|radi
 const MATERIAL = /^(?:ply|plywood|stock|spruce|oak|ash|cedar|fir|pine|larch|mahogany|walnut|teak|maple|timber|lumber|board|boards|sheet|sheets|okoume|meranti|thick|thickness|strip|planking|material|marine|acrylic|polycarbonate|plate|perspex|poplar|elm|birch|planks|staff)$/
 const FASTENER = /^(?:screws?|nails?|staples?|bolts?|rivets?|rings?|brads?|roves?|tacks|pins)$/
 const VAGUE_BEFORE = /^(?:couple|few|several|some|many)$/
-const HEAT = /\b(?:in here|in the (?:shed|shop|garage|barn|workshop|tent|room)|outside|warm|cold|cool|hot|heater|heat|temperature|thermometer|fahrenheit|celsius|centigrade|today|this morning|overnight|above|below freezing|the glue|epoxy|resin|hardener|cure|curing|kettle|steam|oven|weather|it's only|got up to|room|air|roof|pot life|minutes|tonight|sunny|cook|cooks|boil|warmed|warmed up)\b/
+const HEAT = /\b(?:in here|in the (?:shed|shop|garage|barn|workshop|tent|room)|outside|warm|cold|cool|hot|heater|heat|temperature|thermometer|fahrenheit|celsius|centigrade|today|this morning|overnight|above|below freezing|the glue|epoxy|resin|hardener|cure|curing|kettle|steam|oven|weather|it's only|got up to|room|air|roof|pot life|minutes|tonight|sunny|cook|cooks|boil|warmed|warmed up|stove|fire|radiator|sun)\b/
 const ANGLE_WORDS = /\b(?:bevel|angle|rake|flare|slope|plane|cut|set|tilt|gauge|square|miter|mitre|saw|blade|edge|corner|camber|lean|leans|twist|bend|off|lean it|stick|upright|vertical|table)\b/
 
 interface Heard { tokens: FactToken[], text: string, lower: string, cueAt: (offset: number) => { startMs: number, endMs: number }, speaker: Speaker, inches: boolean }
@@ -311,6 +311,8 @@ function readMeasured(heard: Heard, number: SpokenNumber): Found | null {
 function isIdleTime(heard: Heard, number: SpokenNumber, unit: number, to: number): boolean {
   const text = word(heard, unit)
   if (number.article && /^(?:second|minute|day)/.test(text) && number.to === unit) return true
+  // "In an hour there's going to be a lid on this."
+  if (number.article && word(heard, number.from - 1) === 'in') return true
   if (/^(?:ago|late|early|away|left|earlier|later|off)$/.test(word(heard, to)) && !(word(heard, to) === 'later' && /^(?:minute|hour)/.test(text))) return true
   if (/^(?:days?)$/.test(text) && /^(?:in|for|past|last|every|these|about|of)$/.test(word(heard, number.from - 1)) && !/cure|epoxy|glue|varnish|paint|dry/.test(around(heard, number.from, 80))) return true
   return /^(?:day|days)$/.test(text) && number.value === 1 && !/cure|glue|dry|leave|left/.test(around(heard, number.from, 60))
@@ -332,7 +334,11 @@ function lengthKind(heard: Heard, to: number, from = to, mm = 0): FactKind {
 }
 
 function readDegrees(heard: Heard, number: SpokenNumber): Found | null {
-  if (number.article) return null
+  if (number.article) {
+    // "A degree and a half".
+    const more = word(heard, number.to) === 'degree' && word(heard, number.to + 1) === 'and' ? readNumber(heard.tokens, number.to + 2) : null
+    return more?.form === 'fraction' ? { fact: fact(heard, number.from, more.to, 'angle', 1 + more.value, 'deg'), to: more.to } : null
+  }
   let at = number.to
   if (word(heard, at) === '-') at++
   const sign = word(heard, at)
@@ -394,8 +400,8 @@ function readBareLength(heard: Heard, number: SpokenNumber): Found | null {
   }
   if (number.article || (number.value === 1 && !heard.tokens[number.from]!.number)) return null
   // "It's 2240 and 2243": nothing else in a metric shop has four figures.
-  const metres = !heard.inches && heard.tokens[number.from]!.number && number.value >= 150 && number.value < 12_000 && (number.value < 1900 || number.value > 2035)
-  if (metres && /^(?:it's|is|at|to|and|,|that's|says)$/.test(word(heard, number.from - 1)) && /^(?:and|[.,;]|both|on|at|from|to|exactly|dead|)$/.test(next)) return { fact: fact(heard, number.from, number.to, 'length', number.value, 'mm'), to: number.to }
+  const metres = !heard.inches && number.value >= 150 && number.value < 12_000 && (number.value < 1900 || number.value > 2035)
+  if (metres && /^(?:it's|is|at|to|and|,|that's|says|them|in)$/.test(word(heard, number.from - 1)) && /^(?:and|[.,;]|both|on|at|from|to|exactly|dead|back|forward|aft|up|down|each|because|)$/.test(next)) return { fact: fact(heard, number.from, number.to, 'length', number.value, 'mm'), to: number.to }
   const dimension = /^(?:wide|thick|deep|tall|apart|proud|oversize|diameter)$/.test(next) || (next === 'long' && !heard.inches && number.value >= 20) || /^(?:centers|centres|spacing|spacings)$/.test(next) || (/^(?:mm)$/.test(next))
   if (!dimension) return null
   if (heard.inches) return { fact: fact(heard, number.from, number.to, 'length', tenth(number.value * INCH), 'mm'), to: number.to }
@@ -421,9 +427,11 @@ function readCount(heard: Heard, number: SpokenNumber): Found | null {
   if (at >= 0 && (number.value >= 3 || text[at] === 'coats')) return { fact: fact(heard, number.from, number.to + at + 1, 'count', number.value, 'count'), to: number.to + at + 1 }
   if (at >= 0) return null
   if (text[0] === 'extra' && number.value >= 3) return { fact: fact(heard, number.from, number.to + 1, 'count', number.value, 'count'), to: number.to + 1 }
-  if (/^(?:in|at|to|for|on)$/.test(text[0]!) && text[1] === 'each' && /^[a-z]+$/.test(text[2]!)) return { fact: fact(heard, number.from, number.to + 3, 'count', number.value, 'count'), to: number.to + 3 }
+  if (/^(?:in|at|to|for|on)$/.test(text[0]!) && /^(?:each|every)$/.test(text[1]!) && /^[a-z]+$/.test(text[2]!)) return { fact: fact(heard, number.from, number.to + 3, 'count', number.value, 'count'), to: number.to + 3 }
   if (/^(?:up|along|down|on|per|each|a)$/.test(text[0]!) && /^(?:each|the|per|every|a|side|outside|inside|bottom|top)$/.test(text[1]!) && /^(?:side|sides|bottom|top|outside|inside|edge|edges|end|ends|each|row|plank|strake|bay|frame|rib|foot|joint|lap|station|corner)$/.test([text[1]!, text[2]!].find(item => /^(?:side|sides|bottom|top|outside|inside|edge|edges|end|ends|row|plank|strake|bay|frame|rib|foot|joint|lap|station|corner)$/.test(item)) ?? '')) {
     const to = number.to + (text[1] === 'side' ? 2 : 3)
+    // "300 each side of the middle" is a distance.
+    if (number.value > 60) return null
     return { fact: fact(heard, number.from, to, 'count', number.value, 'count'), to }
   }
   if (text[0] === 'of' && /^(?:them|these|those)$/.test(text[1]!) && (number.value >= 10 || (number.value >= 4 && /^(?:there's|there|did|made|about|of|need|needs|got)$/.test(before)))) return { fact: fact(heard, number.from, number.to + 2, 'count', number.value, 'count'), to: number.to + 2 }
