@@ -3,7 +3,7 @@
 export const SESSION_ACTIONS = [
   'toggle', 'back', 'pause', 'on', 'second-back', 'second-on', 'frame-back', 'frame-on', 'camera',
   'in', 'out', 'go-in', 'go-out', 'clear', 'tag',
-  'chapter-before', 'chapter-after', 'split', 'join', 'ink', 'start-here', 'end-here', 'note', 'delete', 'undo', 'redo',
+  'chapter-before', 'chapter-after', 'pencilled-before', 'pencilled-after', 'other-step', 'other-operation', 'retag', 'split', 'join', 'ink', 'start-here', 'end-here', 'note', 'delete', 'undo', 'redo',
   'find', 'follow', 'keys',
 ] as const
 export type SessionAction = typeof SESSION_ACTIONS[number]
@@ -15,7 +15,7 @@ export interface SessionKey {
   /** For people. */
   keys: string
   /** `event.key`, lower case; `code` where Alt or another layout may change the letter. */
-  match: { key: string[], code?: string, shift?: boolean, command?: boolean, alt?: boolean }
+  match: { key: string[], code?: string, /** By place on the keyboard: Shift and a digit is another character on every layout. */ codes?: string[], shift?: boolean, command?: boolean, alt?: boolean }
 }
 
 export const SESSION_KEYS: readonly SessionKey[] = [
@@ -35,9 +35,14 @@ export const SESSION_KEYS: readonly SessionKey[] = [
   { action: 'go-in', group: 'In and out', does: 'Go to the in point', keys: 'Shift I', match: { key: ['i'], shift: true } },
   { action: 'go-out', group: 'In and out', does: 'Go to the out point', keys: 'Shift O', match: { key: ['o'], shift: true } },
   { action: 'clear', group: 'In and out', does: 'Clear in and out, or let go of the chapter', keys: 'X or Esc', match: { key: ['x', 'escape'] } },
-  { action: 'tag', group: 'In and out', does: 'Tag what is marked; else retag the chapter', keys: 'Enter', match: { key: ['enter'] } },
+  { action: 'tag', group: 'In and out', does: 'Tag what is marked; else ink the pencilled chapter and go on to the next, or retag the inked one', keys: 'Enter', match: { key: ['enter'] } },
   { action: 'chapter-before', group: 'Chapters', does: 'The chapter before', keys: '↑', match: { key: ['arrowup'] } },
   { action: 'chapter-after', group: 'Chapters', does: 'The chapter after', keys: '↓', match: { key: ['arrowdown'] } },
+  { action: 'pencilled-before', group: 'Chapters', does: 'The pencilled chapter before', keys: 'Shift ↑', match: { key: ['arrowup'], shift: true } },
+  { action: 'pencilled-after', group: 'Chapters', does: 'The pencilled chapter after', keys: 'Shift ↓', match: { key: ['arrowdown'], shift: true } },
+  { action: 'other-step', group: 'Chapters', does: 'Make it the next likeliest step, the second or the third', keys: '1 2 3', match: { key: [], codes: ['Digit1', 'Digit2', 'Digit3'] } },
+  { action: 'other-operation', group: 'Chapters', does: 'Make it the next likeliest operation, the second or the third', keys: 'Shift 1 2 3', match: { key: [], codes: ['Digit1', 'Digit2', 'Digit3'], shift: true } },
+  { action: 'retag', group: 'Chapters', does: 'Choose its step and operation', keys: 'R', match: { key: ['r'] } },
   { action: 'split', group: 'Chapters', does: 'Split at the playhead', keys: 'S', match: { key: ['s'] } },
   { action: 'join', group: 'Chapters', does: 'Join with the next', keys: 'M', match: { key: ['m'] } },
   { action: 'ink', group: 'Chapters', does: 'Ink a pencilled chapter', keys: 'N', match: { key: ['n'] } },
@@ -65,11 +70,15 @@ export function sessionActionOf(event: Pressed): SessionAction | null {
   const found = SESSION_KEYS.find(({ match }) => {
     if (Boolean(match.command) !== command) return false
     if (event.altKey) return match.alt === true && event.code === match.code && !event.shiftKey
+    if (match.codes) return match.codes.includes(event.code) && Boolean(match.shift) === event.shiftKey
     if (!match.key.includes(key)) return false
     return ANY_SHIFT.has(key) || Boolean(match.shift) === event.shiftKey
   })
   return found?.action ?? null
 }
+
+/** Which of several a digit names, from 0. */
+export const digitOf = (event: Pick<KeyboardEvent, 'code'>): number => Number(event.code.slice(-1)) - 1
 
 /** The key of an action as people read it, for buttons. */
 export function keyWords(action: SessionAction): string {

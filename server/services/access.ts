@@ -2,7 +2,7 @@ import { and, eq, or, type SQL, sql } from 'drizzle-orm'
 import { notFound, DomainError } from '#shared/utils/errors'
 import type { Role } from '#shared/types/trade'
 import type { Executor } from '../database/client'
-import { type Build, builds, captionTracks, chapters, clips, memberships, sessions, steps, parts, cues } from '../database/schema'
+import { type Build, builds, captionTracks, chapters, clips, memberships, sessions, steps, parts, pickups, cues, facts } from '../database/schema'
 
 /**
  * What somebody wants of a build.
@@ -23,7 +23,7 @@ export function maySeeBuild(userId: string | null): SQL {
   return userId ? sql`(${open} or ${memberships.userId} = ${userId})` : open
 }
 
-const NAMES = { build: 'That build', session: 'That session', clip: 'That clip', chapter: 'That chapter', track: 'That caption file', step: 'That step', part: 'That part', cue: 'That caption' } as const
+const NAMES = { build: 'That build', session: 'That session', clip: 'That clip', chapter: 'That chapter', track: 'That caption file', step: 'That step', part: 'That part', cue: 'That caption', fact: 'That fact', pickup: 'That pick-up' } as const
 export type Subject = keyof typeof NAMES
 
 /**
@@ -56,6 +56,8 @@ function belongs(subject: Subject, id: string): SQL {
     case 'chapter': return sql`${builds.id} = (select ${chapters.buildId} from ${chapters} where ${chapters.id} = ${id})`
     case 'track': return sql`${builds.id} = (select ${captionTracks.buildId} from ${captionTracks} where ${captionTracks.id} = ${id})`
     case 'cue': return sql`${builds.id} = (select ${cues.buildId} from ${cues} where ${cues.id} = ${id})`
+    case 'fact': return sql`${builds.id} = (select ${facts.buildId} from ${facts} where ${facts.id} = ${id})`
+    case 'pickup': return sql`${builds.id} = (select ${pickups.buildId} from ${pickups} where ${pickups.id} = ${id})`
     case 'step': return sql`${builds.id} = (select ${steps.buildId} from ${steps} where ${steps.id} = ${id})`
     case 'part': return sql`${builds.id} = (select ${parts.buildId} from ${parts} where ${parts.id} = ${id})`
   }

@@ -2,6 +2,7 @@ import { and, asc, desc, eq, inArray, isNull, ne, sql } from 'drizzle-orm'
 import type { BenchClip, BenchStep, BenchView } from '#shared/types/bench'
 import type { Role } from '#shared/types/trade'
 import type { Executor } from '../database/client'
+import { openPickups } from './pickups'
 import { type Build, chapters, clips, clipTasks, sessions, steps } from '../database/schema'
 
 /** Lines of each list; the bench says what is next, not everything. */
@@ -20,6 +21,7 @@ export async function readBench(executor: Executor, build: Build, role: Role): P
     indexing: await readIndexing(executor, build.id),
     untagged: await readUntagged(executor, build.id),
     pencilled: await readPencilled(executor, build.id),
+    pickups: await readPickups(executor, build.id),
     unfilmed: { shown: plan.filter(step => step.filmed).length, steps: unfilmed.slice(0, LINES * 2).map(toStep) },
     next: [...plan.filter(step => step.status === 'under-way'), ...plan.filter(step => step.status === 'to-do')].slice(0, LINES).map(toStep),
     sessions: await readSessions(executor, build.id),
@@ -75,6 +77,11 @@ async function readPencilled(executor: Executor, buildId: string): Promise<Bench
     count: rows[0]?.count ?? 0,
     first: rows.map(({ count: _, number, title, ...row }) => ({ ...row, step: number !== null && title !== null ? { number, title } : null })),
   }
+}
+
+async function readPickups(executor: Executor, buildId: string): Promise<BenchView['pickups']> {
+  const open = await openPickups(executor, buildId)
+  return { count: open.length, first: open.slice(0, LINES) }
 }
 
 // Columns in a selected subquery are named by hand: Drizzle leaves the table out where a query has only one.

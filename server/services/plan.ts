@@ -21,6 +21,12 @@ export async function readPlanView(executor: Executor, buildId: string, options:
   }
 }
 
+/** @throws DomainError `bad-input` when the step is not in this build's plan */
+export async function requireStepOf(executor: Executor, buildId: string, stepId: string): Promise<void> {
+  const [step] = await executor.select({ id: steps.id }).from(steps).where(and(eq(steps.id, stepId), eq(steps.buildId, buildId)))
+  if (!step) throw new DomainError('bad-input', 'That step is not in this build’s plan. Nothing was changed.')
+}
+
 export async function readStep(executor: Executor, stepId: string): Promise<StepView> {
   const [step] = await executor.select().from(steps).where(eq(steps.id, stepId))
   if (!step) throw notFound('That step')

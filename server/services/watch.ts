@@ -4,6 +4,7 @@ import type { Units } from '#shared/types/trade'
 import { notFound } from '#shared/utils/errors'
 import type { Executor } from '../database/client'
 import { type Build, builds, memberships, parts, stepParts, steps, users } from '../database/schema'
+import { publishedFacts } from './facts'
 import { examplesFor } from './search/instead'
 import { maySeeBuild } from './access'
 import { pictureColumns, type PictureSource } from './search/picture'
@@ -76,6 +77,8 @@ export async function watchStep(executor: Executor, userId: string | null, addre
     ...head,
     step: { number, title: step.title, stage: step.stage, description: step.description, materials: step.materials, parts: named },
     chapters: chapters.map(toPublic),
+    facts: await publishedFacts(executor, step.id),
+    units: build.units,
     clips: await publishedClips(executor, [...new Set(chapters.map(chapter => chapter.clipId))]),
     previous: beside(at - 1), next: beside(at + 1), cover: coverOf(longest(chapters), siteUrl),
   }

@@ -1,3 +1,4 @@
+import type { OpenPickup } from './facts'
 import type { TaskView } from './session'
 import type { Operation, Role, StepStatus, Visibility } from './trade'
 
@@ -12,6 +13,8 @@ export interface BenchView {
   untagged: { clips: number, ms: number, longest: BenchStretch[] }
   /** Chapters that wait for a person. */
   pencilled: { count: number, first: (BenchStretch & { operation: Operation, step: { number: number, title: string } | null })[] }
+  /** Said to have been done off camera, and still to be filmed. */
+  pickups: { count: number, first: OpenPickup[] }
   /** Steps begun or done of which nothing is filmed, and how many steps have footage at all. */
   unfilmed: { shown: number, steps: BenchStep[] }
   next: BenchStep[]

@@ -1,6 +1,7 @@
+import type { FactView } from './facts'
 import type { FrameRate } from './media'
 import type { Picture } from './search'
-import type { Operation } from './trade'
+import type { Operation, Units } from './trade'
 
 /** What every public page needs: who it is about and where it stands. Only inked chapters are ever in these. */
 export interface WatchHead {
@@ -33,6 +34,9 @@ export interface WatchStep extends WatchHead {
   step: { number: number, title: string, stage: string, description: string, materials: string[], parts: { name: string, material: string, thicknessMm: number | null, quantity: number | null }[] }
   chapters: WatchChapter[]
   clips: WatchClip[]
+  /** Inked facts said within inked chapters. */
+  facts: Pick<FactView, 'id' | 'clipId' | 'atMs' | 'kind' | 'said' | 'value' | 'unit'>[]
+  units: Units
   previous: { number: number, title: string } | null
   next: { number: number, title: string } | null
   cover: string | null

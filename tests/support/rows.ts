@@ -1,6 +1,6 @@
 import { randomBytes, randomUUID } from 'node:crypto'
 import type { Executor } from '#server/database/client'
-import { type Build, builds, captionTracks, type Chapter, chapterParts, chapters, type Clip, clips, type CueRow, cues, memberships, type Part, parts, type Session, sessions, type Step, stepParts, steps, type User, users } from '#server/database/schema'
+import { type Build, builds, captionTracks, type Chapter, chapterParts, chapters, type Clip, clips, type CueRow, cues, type FactRow, facts, memberships, type Part, parts, type PickupRow, pickups, type Session, sessions, type Step, stepParts, steps, type User, users } from '#server/database/schema'
 import type { Role } from '#shared/types/trade'
 
 /**
@@ -85,5 +85,17 @@ export async function makeChapter(executor: Executor, clip: Pick<Clip, 'id' | 's
     clipId: clip.id, sessionId: clip.sessionId, buildId: clip.buildId, startMs: 0, endMs: 60_000, operation: 'glue', inking: 'inked', ...values,
   }).returning()
   if (shows.length) await executor.insert(chapterParts).values(shows.map(part => ({ chapterId: row!.id, partId: part.id })))
+  return row!
+}
+
+/** A pencilled length of ⅜ in, said at ten seconds, the program's own. */
+export async function makeFact(executor: Executor, clip: Pick<Clip, 'id' | 'sessionId' | 'buildId'>, values: Values<typeof facts> = {}): Promise<FactRow> {
+  const [row] = await executor.insert(facts).values({ clipId: clip.id, sessionId: clip.sessionId, buildId: clip.buildId, atMs: 10_000, kind: 'length', said: '3/8 of an inch', value: 9.525, unit: 'mm', proposed: true, ...values }).returning()
+  return row!
+}
+
+/** Something done off camera, told at twenty seconds, the program's own. */
+export async function makePickup(executor: Executor, clip: Pick<Clip, 'id' | 'sessionId' | 'buildId'>, values: Values<typeof pickups> = {}): Promise<PickupRow> {
+  const [row] = await executor.insert(pickups).values({ clipId: clip.id, sessionId: clip.sessionId, buildId: clip.buildId, atMs: 20_000, words: 'i did that one off camera', proposed: true, ...values }).returning()
   return row!
 }

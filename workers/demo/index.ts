@@ -14,7 +14,6 @@ const chapterSchema = z.object({
   operation: z.enum(OPERATIONS),
   parts: z.array(z.string()),
   state: z.enum(INKINGS),
-  confidence: z.number().min(0).max(1).optional(),
   note: z.string().optional(),
 })
 
@@ -48,6 +47,8 @@ export interface DemoSession {
   humidityPct: number
   notes: string
   stepNumbers: number[]
+  /** Its chapters are left to the program. */
+  toReview?: boolean
   clips: DemoClip[]
 }
 

@@ -34,7 +34,8 @@ const PATIENCE_MS = 120_000
 
 /**
  * Makes the demo build once: accounts, plan, three sessions with their clips and captions through the same services
- * and jobs as anybody's, and the chapters that go with them. A first start that was cut short begins it again.
+ * and jobs as anybody's, and the chapters that go with them; those of the last
+ * session are left to the program, for somebody to ink. A first start that was cut short begins it again.
  */
 export async function seedDemo(settings: Environment, say: (text: string) => void): Promise<DemoAccounts> {
   const mark = join(process.env.RIBBAND_DATA ?? '.data', 'demo.json')
@@ -114,7 +115,7 @@ async function addSession(database: Database, storage: Storage, setting: Setting
   for (const clip of session.clips) {
     const clipId = await addClip(database, storage, setting, sessionId, clip)
     await addCaptionFile(database, storage, sessionId, setting.userId, { name: clip.captions.split('/').at(-1)!, bytes: readFileSync(clip.captions) })
-    await addChapters(database, setting, { sessionId, clipId }, clip)
+    if (!session.toReview) await addChapters(database, setting, { sessionId, clipId }, clip)
   }
 }
 
@@ -137,11 +138,12 @@ async function addClip(database: Database, storage: Storage, { buildId, userId }
 
 async function addChapters(database: Database, { buildId, userId, plan }: Setting, place: { sessionId: string, clipId: string }, clip: DemoClip): Promise<void> {
   await database.transaction(async (tx) => {
-    for (const chapter of clip.chapters) {
+    // What is pencilled is the program's to say, as with anybody's session.
+    for (const chapter of clip.chapters.filter(one => one.state === 'inked')) {
       const stepId = chapter.step === null ? null : plan.steps.find(step => step.number === chapter.step)!.id
       const [row] = await tx.insert(chapters).values({
         ...place, buildId, stepId, startMs: chapter.startMs, endMs: chapter.endMs, operation: chapter.operation, inking: chapter.state,
-        confidence: chapter.state === 'pencilled' ? chapter.confidence ?? 0.6 : null, note: chapter.note ?? '', createdBy: userId, updatedBy: userId, inkedBy: chapter.state === 'pencilled' ? null : userId,
+        note: chapter.note ?? '', createdBy: userId, updatedBy: userId, inkedBy: userId,
       }).returning({ id: chapters.id })
       const partIds = chapter.parts.map(name => plan.parts.find(part => part.name.toLowerCase() === name.toLowerCase())!.id)
       if (partIds.length) await tx.insert(chapterParts).values(partIds.map(partId => ({ chapterId: row!.id, partId })))
@@ -155,7 +157,8 @@ async function waitForClips(database: Database, buildId: string, say: (text: str
   for (let waited = 0; waited < PATIENCE_MS; waited += 250) {
     const { rows: [count] } = await database.execute<{ all: number, done: number, reading: number }>(sql`
       select count(*)::int "all", count(*) filter (where state in ('ready', 'failed'))::int done,
-        (select count(*)::int from caption_tracks t where t.build_id = ${buildId} and not t.read and t.failure is null) reading
+        (select count(*)::int from caption_tracks t where t.build_id = ${buildId} and not t.read and t.failure is null)
+          + (select count(*)::int from pencillings p join sessions s on s.id = p.session_id where s.build_id = ${buildId} and p.state in ('waiting', 'working')) reading
       from clips where build_id = ${buildId}`)
     if (count!.done !== told) say(`  ${told = count!.done} of ${count!.all} demo clips indexed`)
     if (count!.done === count!.all && !count!.reading) return

@@ -23,9 +23,8 @@ export interface ChapterMark {
   step: number | null
   operation: Operation
   parts: string[]
+  /** What is pencilled here is left to the program: it is not laid down with the build. */
   state: Inking
-  /** 0–1, for pencilled chapters only. */
-  confidence?: number
   note?: string
 }
 
@@ -70,5 +69,7 @@ export interface SessionScript {
   humidityPct: number
   notes: string
   stepNumbers: number[]
+  /** Somebody has yet to look at it: all its chapters are left to the program. */
+  toReview?: boolean
   clips: ClipScript[]
 }

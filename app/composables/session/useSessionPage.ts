@@ -1,10 +1,11 @@
 import { computed, onMounted, ref, watch } from 'vue'
 import type { PlanView } from '#shared/types/plan'
-import type { SessionAction } from '~/utils/sessionKeys'
+import { digitOf, type SessionAction } from '~/utils/sessionKeys'
 import { usePlayer } from '../player/usePlayer'
 import { useCaptions } from './useCaptions'
 import { useChapterEdits } from './useChapterEdits'
 import { useMarks } from './useMarks'
+import { useSaid } from './useSaid'
 import { useSessionKeys } from './useSessionKeys'
 import { useTagging } from './useTagging'
 
@@ -19,11 +20,13 @@ export function useSessionPage(buildId: string, sessionId: string) {
     onEvent: (event) => {
       if (event.kind === 'chapter') edits.hear(event)
       if (event.kind === 'clip' || event.kind === 'pencil') void edits.rereadSoon()
+      if (['pencil', 'fact', 'pickup'].includes(event.kind)) void said.reread()
       if (event.kind === 'captions' || (event.kind === 'task' && event.task?.task === 'read-captions' && event.task.state === 'done')) void captions.reread()
     },
     onGap: () => {
       void edits.rereadSoon()
       void captions.reread()
+      void said.reread()
     },
   })
   const plan = useApiData<PlanView>(`plan:${buildId}`, () => `/api/builds/${buildId}/plan`)
@@ -34,6 +37,7 @@ export function useSessionPage(buildId: string, sessionId: string) {
 
   const edits = useChapterEdits({ sessionId, me: () => ({ id: account.value?.id, role: session.value?.role ?? null }), steps: () => steps.value, say })
   const captions = useCaptions(sessionId, () => session.value?.tracks ?? [])
+  const said = useSaid(sessionId)
   const player = usePlayer(() => clips.value)
   const marks = useMarks(player, { cues: () => captions.cues.value, chapters: () => edits.chapters.value, say })
   const tagging = useTagging({ player, edits, marks, buildId: () => buildId, say })
@@ -49,7 +53,9 @@ export function useSessionPage(buildId: string, sessionId: string) {
     'in': event => marks.set('in', event.altKey), 'out': event => marks.set('out', event.altKey),
     'go-in': () => marks.goTo('in'), 'go-out': () => marks.goTo('out'),
     'clear': () => marks.marks.value ? marks.clear() : tagging.select(null),
-    'tag': () => tagging.open(),
+    'tag': () => void tagging.enter(), 'retag': () => tagging.open(),
+    'pencilled-before': () => tagging.stepPencilled(-1), 'pencilled-after': () => tagging.stepPencilled(1),
+    'other-step': event => tagging.takeStep(digitOf(event)), 'other-operation': event => tagging.takeOperation(digitOf(event)),
     'chapter-before': () => tagging.step(-1), 'chapter-after': () => tagging.step(1),
     'split': tagging.splitHere, 'join': tagging.joinNext, 'ink': tagging.inkIt, 'start-here': () => tagging.edgeHere('start'), 'end-here': () => tagging.edgeHere('end'),
     'note': () => reach.note(), 'delete': tagging.deleteIt, 'undo': () => void edits.undo(), 'redo': () => void edits.redo(),
@@ -71,7 +77,7 @@ export function useSessionPage(buildId: string, sessionId: string) {
   // After mounting: the server draws the page at its beginning, and the first drawing in the browser must be the same.
   onMounted(() => watch(() => [route.query.clip, route.query.at, player.placed.value.length], goToLink, { immediate: true }))
 
-  return { ...live, session, clips, steps, parts, plan, edits, captions, player, marks, tagging, keysOpen, spoken, reach, ready: Promise.all([plan]) }
+  return { ...live, session, clips, steps, parts, plan, edits, captions, said, player, marks, tagging, keysOpen, spoken, reach, ready: Promise.all([plan]) }
 }
 
 export type SessionPage = ReturnType<typeof useSessionPage>

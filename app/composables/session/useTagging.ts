@@ -1,6 +1,7 @@
 import { computed, ref, shallowRef } from 'vue'
 import type { ChapterView } from '#shared/types/session'
 import { type Edit, inkedInTheWay, ink, join, mark, moveEdge, nextOf, remove, retag, split, type Tag } from '#shared/utils/chapters/edits'
+import { nearlyCertain } from '#shared/utils/chapters/confidence'
 import { lengthWords } from '#shared/utils/chapters/words'
 import { formatClock } from '#shared/utils/timecode'
 import type { Player } from '../player/usePlayer'
@@ -104,6 +105,11 @@ export function useTagging({ player, edits, marks, buildId, say }: Input) {
   function select(id: string | null): void {
     selectedId.value = id
   }
+  /** Goes to a moment of a chapter's clip, the chapter staying the chosen one. */
+  function seek(chapter: ChapterView, atMs: number): void {
+    selectedId.value = chapter.id
+    player.enter(chapter.clipId, atMs)
+  }
   /** Goes to a chapter and selects it. */
   function visit(id: string): void {
     selectedId.value = id
@@ -153,10 +159,55 @@ export function useTagging({ player, edits, marks, buildId, say }: Input) {
     if (chapter.inking === 'inked') return say('This chapter is inked already')
     void attempt(ink([chapter]), `Ink ${edits.nameOf(chapter)}`, `Inked ${edits.nameOf(chapter)}`)
   })
+  /** What else the chapter may show, as it was thought when it was proposed; at most three of each. */
+  const others = computed(() => subject.value
+    ? { steps: subject.value.alternatives.steps.slice(0, 3), operations: subject.value.alternatives.operations.slice(0, 3) }
+    : { steps: [], operations: [] })
+  const takeStep = (n: number) => withSubject('retag', (chapter) => {
+    const other = others.value.steps[n]
+    if (!other) return say('There is no other step to choose from here')
+    selectedId.value = chapter.id
+    // A step is worked on: what showed no work before cannot go on showing none.
+    const operation = other.stepId !== null && chapter.operation === 'none' ? others.value.operations.find(one => one.operation !== 'none')?.operation ?? 'plan-talk' : chapter.operation
+    void change(chapter, { stepId: other.stepId, operation })
+  })
+  const takeOperation = (n: number) => withSubject('retag', (chapter) => {
+    const other = others.value.operations[n]
+    if (!other) return say('There is no other operation to choose from here')
+    selectedId.value = chapter.id
+    void change(chapter, { operation: other.operation })
+  })
+  /** Enter: tags what is marked; else inks what is pencilled and goes on, or opens what is inked to be told anew. */
+  async function enter(): Promise<void> {
+    const chapter = marks.range.value ? null : changeable.value
+    if (chapter?.inking !== 'pencilled') return open()
+    const done = attempt(ink([chapter]), `Ink ${edits.nameOf(chapter)}`, `Inked ${edits.nameOf(chapter)}`)
+    stepPencilled(1, chapter)
+    await done
+  }
+  /** Goes to the next pencilled chapter, or the one before, from where one is. */
+  function stepPencilled(by: 1 | -1, from = subject.value): void {
+    const list = inOrder.value
+    const at = from ? list.findIndex(one => one.chapter.id === from.id) : by > 0 ? list.findIndex(one => one.startMs >= player.atMs.value) - 1 : list.findIndex(one => one.startMs > player.atMs.value)
+    const found = by > 0 ? list.slice(at + 1) : list.slice(0, Math.max(0, at)).reverse()
+    const next = found.find(one => one.chapter.inking === 'pencilled')
+    if (next) visit(next.chapter.id)
+    else say(pencilled.value.length ? `No pencilled chapter ${by > 0 ? 'after' : 'before'} this one` : 'Everything is inked')
+  }
   const pencilled = computed(() => edits.chapters.value.filter(one => one.inking === 'pencilled'))
   async function inkAll(): Promise<void> {
     const list = pencilled.value
     if (list.length && await confirm({ title: `Ink ${list.length === 1 ? 'one chapter' : `${list.length} chapters`}?`, message: 'You say that they are right as proposed. Inked chapters can be published. It can be undone.', action: 'Ink all', danger: false })) await edits.run(ink(list))
+  }
+
+  const certain = computed(() => nearlyCertain(pencilled.value))
+  async function inkCertain(): Promise<void> {
+    const list = certain.value
+    if (!list.length) return
+    const edit = ink(list)
+    if (await attempt(edit, edit.label, `Inked ${list.length} ${list.length === 1 ? 'chapter' : 'chapters'}`)) {
+      notice({ kind: 'good', text: `${list.length === 1 ? '1 chapter is' : `${list.length} chapters are`} inked.`, action: { label: 'Undo', run: edits.undo } })
+    }
   }
 
   function edgeTo(chapter: ChapterView, edge: 'start' | 'end', clipMs: number, words: string): void {
@@ -175,7 +226,7 @@ export function useTagging({ player, edits, marks, buildId, say }: Input) {
     edgeTo(chapter, edge, ms, `Chapter ${edge === 'start' ? 'begins' : 'ends'} here now`)
   })
 
-  return { picking, selectedId, selected, here, subject, changeable, mayBeChanged: edits.mayBeChanged, inOrder, pencilled, open, finish, leave, change, select, visit, step, splitHere, joinNext, deleteIt, inkIt, inkAll, moveEdgeOf, edgeHere }
+  return { picking, selectedId, selected, here, subject, changeable, mayBeChanged: edits.mayBeChanged, inOrder, pencilled, certain, others, enter, stepPencilled, takeStep, takeOperation, inkCertain, open, finish, leave, change, select, seek, visit, step, splitHere, joinNext, deleteIt, inkIt, inkAll, moveEdgeOf, edgeHere }
 }
 
 export type Tagging = ReturnType<typeof useTagging>

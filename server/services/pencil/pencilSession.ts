@@ -3,6 +3,7 @@ import { besideWalls, matchMoments, matchStretches, type Stretch } from '#server
 import { pencil, type Pencilled } from '#server/indexing/pencil/pencil'
 import type { PencilledChapter } from '#server/indexing/pencil/types'
 import { SHORTEST_CHAPTER_MS } from '#shared/utils/chapters/edits'
+import { DomainError } from '#shared/utils/errors'
 import type { Transaction } from '../../database/client'
 import { chapterParts, chapters, dismissals, facts, pickups } from '../../database/schema'
 import { lockSession } from '../clips'
@@ -12,6 +13,9 @@ import { type PencilMaterial, readPencilMaterial } from './material'
 
 /** What the program has come to change of its own. */
 export interface Repencilled { chapters: { changed: string[], removed: string[] }, facts: number, pickups: number }
+
+/** Some twenty hours of speech. A file that is no session's captions must not keep the worker for the day. */
+const MOST_CUES = 20_000
 
 const NOTHING: Repencilled = { chapters: { changed: [], removed: [] }, facts: 0, pickups: 0 }
 
@@ -24,6 +28,8 @@ export async function pencilSession(tx: Transaction, sessionId: string): Promise
   await lockSession(tx, sessionId)
   const material = await readPencilMaterial(tx, sessionId)
   if (!material) return NOTHING
+  const said = material.input.clips.reduce((sum, clip) => sum + clip.cues.length, 0)
+  if (said > MOST_CUES) throw new DomainError('bad-input', `${said} captions are more than anybody says in a session`)
   const found: Pencilled = material.clips.length ? pencil(material.input) : { chapters: [], facts: [], toldNotShown: [] }
   const done = {
     chapters: await keepChapters(tx, sessionId, material, found.chapters),

@@ -2,11 +2,11 @@ import { Hash } from '@adonisjs/hash'
 import { Scrypt } from '@adonisjs/hash/drivers/scrypt'
 import { eq } from 'drizzle-orm'
 import type { Database } from '#server/database/client'
-import { cues, parts, steps, uploads, type User } from '#server/database/schema'
+import { cues, facts, parts, pickups, steps, uploads, type User } from '#server/database/schema'
 import type { FootageIndex, ProbeResult } from '#shared/types/media'
 import type { Visibility } from '#shared/types/trade'
 import { productStorage } from '../../support/productDatabase'
-import { makeBuild, makeChapter, makeClip, makeCues, makePart, makeSession, makeStep, makeUser } from '../../support/rows'
+import { makeBuild, makeChapter, makeClip, makeCues, makeFact, makePart, makePickup, makeSession, makeStep, makeUser } from '../../support/rows'
 
 export const PASSWORD = 'chine log and sheer'
 const ASKERS = ['builder', 'crew', 'follower', 'stranger', 'spare'] as const
@@ -40,6 +40,8 @@ export async function makeFixture(database: Database, people: Awaited<ReturnType
   await makeChapter(database, clip, { stepId: step.id })
   const [cue] = await makeCues(database, clip, ['this is the knee'])
   const track = cue!.trackId
+  const fact = await makeFact(database, clip)
+  const pickup = await makePickup(database, clip)
   const storage = productStorage()
   let span = 1000
   let stepsMade = 0
@@ -55,6 +57,8 @@ export async function makeFixture(database: Database, people: Awaited<ReturnType
     anotherClip: () => makeClip(database, session),
     anotherTrack: async () => (await makeCues(database, clip, ['x'], { name: 'other.vtt' }))[0]!.trackId,
     freshCue: async () => (await database.select().from(cues).where(eq(cues.id, cue!.id)))[0]!,
+    freshFact: async () => (await database.select().from(facts).where(eq(facts.id, fact.id)))[0]!,
+    freshPickup: async () => (await database.select().from(pickups).where(eq(pickups.id, pickup.id)))[0]!,
     stepIds: async () => (await database.select({ id: steps.id }).from(steps).where(eq(steps.buildId, build.id)).orderBy(steps.position)).map(row => row.id),
     partIds: async () => (await database.select({ id: parts.id }).from(parts).where(eq(parts.buildId, build.id)).orderBy(parts.position)).map(row => row.id),
     uploadingClip: async () => {

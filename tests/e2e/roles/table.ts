@@ -72,6 +72,7 @@ export const TABLE: Record<string, Row> = {
   'PATCH /api/parts/[part]': run(async f => ({ path: `/api/parts/${(await f.anotherPart()).id}`, body: { material: 'larch' } })),
   'DELETE /api/parts/[part]': run(async f => ({ path: `/api/parts/${(await f.anotherPart()).id}` })),
 
+  'GET /api/builds/[build]/facts': work(f => ({ path: `/api/builds/${f.build.id}/facts` })),
   'GET /api/builds/[build]/sessions': work(f => ({ path: `/api/builds/${f.build.id}/sessions` })),
   'POST /api/builds/[build]/sessions': work(f => ({ path: `/api/builds/${f.build.id}/sessions`, body: { date: '2026-10-03' } }), 201),
   'GET /api/sessions/[session]': inner(f => ({ path: `/api/sessions/${f.session.id}` })),
@@ -84,6 +85,17 @@ export const TABLE: Record<string, Row> = {
     path: `/api/sessions/${f.session.id}/chapters`,
     body: { put: [{ id: randomUUID(), clipId: f.clip.id, ...f.freeSpan(), stepId: null, operation: 'cut', partIds: [], inking: 'inked', version: null }] },
   }), { builder: 200, crew: 200, follower: 404, stranger: 404, guest: 401 }),
+  'GET /api/sessions/[session]/facts': inner(f => ({ path: `/api/sessions/${f.session.id}/facts` })),
+  'GET /api/sessions/[session]/pickups': inner(f => ({ path: `/api/sessions/${f.session.id}/pickups` })),
+  'POST /api/sessions/[session]/pencil': inner(f => ({ path: `/api/sessions/${f.session.id}/pencil`, body: {} })),
+  'PATCH /api/facts/[fact]': inner(async (f) => {
+    const fact = await f.freshFact()
+    return { path: `/api/facts/${fact.id}`, body: { stepId: f.step.id, version: fact.version } }
+  }),
+  'PATCH /api/pickups/[pickup]': inner(async (f) => {
+    const pickup = await f.freshPickup()
+    return { path: `/api/pickups/${pickup.id}`, body: { state: 'done', version: pickup.version } }
+  }),
   'GET /api/sessions/[session]/events': inner(f => ({ path: `/api/sessions/${f.session.id}/events` })),
   'POST /api/sessions/[session]/captions': inner(f => ({ path: `/api/sessions/${f.session.id}/captions?name=clip.vtt`, bytes: Buffer.from('WEBVTT\n\n00:01.000 --> 00:02.000\nhello\n') }), 201),
   'POST /api/sessions/[session]/clips': inner(f => ({

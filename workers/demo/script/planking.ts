@@ -8,6 +8,7 @@ export const planking: SessionScript = {
   temperatureC: 19,
   humidityPct: 55,
   notes: 'Both sides and the bottom on in one long day. Split one screw hole at the bow, filled. Port side not filmed. 1.9 kg of epoxy in six batches.',
+  toReview: true,
   stepNumbers: [14, 15, 16, 17, 18, 19],
   clips: [
     {
@@ -121,7 +122,7 @@ export const planking: SessionScript = {
           ],
         },
         {
-          chapter: { step: 19, operation: 'clean-up', parts: ['bottom panel'], state: 'pencilled', confidence: 0.71 },
+          chapter: { step: 19, operation: 'clean-up', parts: ['bottom panel'], state: 'pencilled' },
           lines: [
             { text: 'The drips inside we scrape from below, lying on the floor with a stick.', shot: 'under-hull', pauseMs: 1600, sound: 'brush' },
           ],

@@ -101,7 +101,7 @@ export const strongback: SessionScript = {
           ],
         },
         {
-          chapter: { step: 13, operation: 'sand-fair', parts: ['chine log'], state: 'pencilled', confidence: 0.57 },
+          chapter: { step: 13, operation: 'sand-fair', parts: ['chine log'], state: 'pencilled' },
           lines: [
             { text: 'Last thing, the bevel. Plane until the straight edge lies flat from chine to chine.', shot: 'chine-bevel', pauseMs: 3600, sound: 'plane' },
             { text: 'Port side I will finish in the week.', pauseMs: 1500, sound: 'plane' },

@@ -126,7 +126,7 @@ export const transoms: SessionScript = {
           ],
         },
         {
-          chapter: { step: 8, operation: 'glue', parts: ['middle frame', 'gusset'], state: 'pencilled', confidence: 0.64, note: 'Gusset first glued to the wrong face.' },
+          chapter: { step: 8, operation: 'glue', parts: ['middle frame', 'gusset'], state: 'pencilled', note: 'Gusset first glued to the wrong face.' },
           lines: [
             { text: 'A ply gusset goes over each corner, with glue and 3/4 inch ring nails to hold it.', shot: 'frame-gussets', pauseMs: 2600, sound: 'hammer' },
             { text: 'And that one is on the wrong face. Off it comes while the glue is wet.', pauseMs: 1600 },
