@@ -142,9 +142,10 @@ const endOf = (clip: SpokenClip) => clip.durationMs ?? Math.max(0, ...clip.cues.
 /** Puts proposals end to end on each clip, fixed chapters at their own times, and cuts what lies under them. */
 function layOut(proposals: Proposal[], input: PencilInput): PencilledChapter[] {
   return input.clips.flatMap((clip, at) => {
-    const end = endOf(clip)
     const mine = proposals.filter(proposal => proposal.clip === at)
     const fixed = (input.fixed ?? []).filter(chapter => chapter.clip === at).sort((a, b) => a.startMs - b.startMs)
+    // A chapter made by hand over silence may end behind the last cue, when the clip's length is not known.
+    const end = Math.max(endOf(clip), ...fixed.map(chapter => chapter.endMs))
     // Each proposal lasts until the next one starts.
     const stretched = mine.map((proposal, i) => ({ ...proposal, startMs: i ? proposal.startMs : 0, endMs: mine[i + 1]?.startMs ?? Math.max(end, proposal.endMs) }))
     if (!stretched.length && end > 0) stretched.push(empty(at, end))
@@ -168,13 +169,16 @@ function layOut(proposals: Proposal[], input: PencilInput): PencilledChapter[] {
 
 const SLIVER_MS = 1500
 
-/** A scrap left between fixed chapters, too short to be anything, goes to its pencilled neighbour. */
+/** A scrap left beside fixed chapters, too short to be anything, goes to its pencilled neighbour. */
 function joinSlivers(chapters: PencilledChapter[]): PencilledChapter[] {
   const joined: PencilledChapter[] = []
+  const sliver = ({ startMs, endMs }: PencilledChapter) => endMs - startMs < SLIVER_MS
   for (const chapter of chapters) {
     const last = joined.at(-1)
-    const same = last && !last.fixed && !chapter.fixed && last.step === chapter.step && last.operation === chapter.operation
-    if (last && !last.fixed && !chapter.fixed && (same || chapter.endMs - chapter.startMs < SLIVER_MS)) last.endMs = chapter.endMs
+    const both = last && !last.fixed && !chapter.fixed
+    const same = both && last.step === chapter.step && last.operation === chapter.operation
+    if (both && (same || sliver(chapter))) last.endMs = chapter.endMs
+    else if (both && sliver(last)) joined.splice(-1, 1, { ...chapter, startMs: last.startMs })
     else joined.push({ ...chapter })
   }
   return joined

@@ -27,11 +27,13 @@ export function portionsOf(speech: Speech, fixed: readonly FixedStretch[], most 
         cut = i
       }
     }
-    if (cut < 0) cut = from + most
+    // One fixed chapter lies over every place: cut before it, or behind it when it starts the portion.
+    const over = cut < 0 ? fixed.find(stretch => from + most > stretch.from && from + most < stretch.to) : undefined
+    if (cut < 0) cut = !over ? from + most : over.from > from ? over.from : over.to
     portions.push({ from, to: cut })
     from = cut
   }
-  portions.push({ from, to: n })
+  if (from < n || !n) portions.push({ from, to: n })
   return portions
 }
 

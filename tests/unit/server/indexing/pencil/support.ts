@@ -1,4 +1,5 @@
 import { KINDS, type Lattice, W } from '#server/indexing/pencil/lattice'
+import type { Fitted } from '#server/indexing/pencil/pencil'
 import type { PlanPart, PlanStep, SpokenClip } from '#server/indexing/pencil/types'
 
 /** Numbers from -1 to 1 that are the same in every run. */
@@ -117,3 +118,11 @@ export function clipOf(texts: string[], options: { fromMs?: number, everyMs?: nu
 }
 
 export const talk = (...steps: number[]): string[] => steps.flatMap(number => TALK[number]!)
+
+const curve = [[0, 0], [1, 1]] as const
+const weights = {
+  'step.title': 0.8, 'step.description': 0.5, 'step.part': 0.8, 'step.topic': 0.3, 'heard.work': 0.5, 'heard.planTalk': 0.5, 'heard.cleanUp': 0.5, 'none.chat': 1, 'none.rate': -0.5, 'stepless.rate': -0.5,
+  'turn.always': -2, 'turn.okay': 1.5, 'turn.so': 1.5, 'to.plus1': -1, 'to.plus2': -2, 'to.plus3to5': -3, 'to.further': -4, 'to.minus1': -3, 'to.back': -3, 'to.none': -1, 'to.steplessPlanTalk': -3, 'to.steplessCleanUp': -3,
+}
+/** A model by rule of thumb: what is tested with it is how the program works, not how well its weights are fitted. */
+export const PLAIN: Fitted = { open: { weights, curve }, ticked: { weights, curve } }
