@@ -14,6 +14,8 @@ export const FACT_WORDS: Record<FactKind, string> = {
 /** From this length on inches alone are hard to picture. */
 const FEET_FROM_IN = 36
 const MM_PER_INCH = 25.4
+/** Facts are kept to a tenth of a millimetre; what is off by more than half of that is not what was said. */
+const EXACT_MM = 0.06
 
 /** The value in the build's units: '3⁄8 in', '12 ft', '15°', '45 min', '8 : 1', '68 °F'. Null when it is a name and no number. */
 export function factValue({ value, unit }: Pick<Measured, 'value' | 'unit'>, units: Units): string | null {
@@ -30,7 +32,11 @@ export function factValue({ value, unit }: Pick<Measured, 'value' | 'unit'>, uni
 
 function lengthText(mm: number, units: Units): string {
   const inches = mm / MM_PER_INCH
-  if (units === 'mm' || inches < FEET_FROM_IN) return formatLength(mm, units).text
+  if (units === 'mm' || inches < FEET_FROM_IN) {
+    const { text, errorMm } = formatLength(mm, units)
+    // 9 mm plywood is no 23⁄64 in.
+    return Math.abs(errorMm) > EXACT_MM ? `≈ ${text}` : text
+  }
   const feet = Math.floor(inches / 12 + 1e-6)
   const rest = mm - feet * 12 * MM_PER_INCH
   return Math.abs(rest) < MM_PER_INCH / 128 ? `${feet} ft` : `${feet} ft ${formatLength(rest, 'inch').text}`
@@ -52,7 +58,7 @@ export type FactReading = { ok: true, value: number | null, unit: FactUnit | nul
 
 /** Reads a mended value in the fact's own measure; a bare number is in the build's units. */
 export function readFactValue(text: string, { unit }: Pick<Measured, 'unit'>, units: Units): FactReading {
-  const typed = text.trim()
+  const typed = text.replace('≈', '').trim()
   if (unit === 'mm') {
     const read = parseLength(typed, units)
     return read.ok ? { ok: true, value: Math.round(read.length.mm * 1000) / 1000, unit } : read

@@ -1,4 +1,5 @@
 import { computed, nextTick, ref, shallowRef, watch, type Ref } from 'vue'
+import { useResizeObserver } from '@vueuse/core'
 import { defaultRangeExtractor, useVirtualizer } from '@tanstack/vue-virtual'
 import type { ChapterView } from '#shared/types/session'
 import { findRows, nextFound, layTranscript, rowAt, type TranscriptRow } from '#shared/utils/transcript/rows'
@@ -51,6 +52,8 @@ export function useTranscript({ player, captions, chapters, list, pinned }: Inpu
     await nextTick()
     if (following.value) reveal(current.value)
   })
+  // What stands above the list comes and goes: what is said stays in sight.
+  useResizeObserver(list, () => following.value && reveal(current.value))
   function follow(): void {
     following.value = true
     reveal(current.value)

@@ -117,11 +117,18 @@ async function keepFacts(tx: Transaction, sessionId: string, material: PencilMat
 
 async function keepPickups(tx: Transaction, sessionId: string, material: PencilMaterial, told: Pencilled['toldNotShown']): Promise<number> {
   const rows = await tx.select().from(pickups).where(eq(pickups.sessionId, sessionId)).orderBy(pickups.atMs, pickups.id).for('update')
-  const fresh = told.map(({ clip, atMs, step, words }) => ({ clipId: material.clips[clip]!.id, atMs: Math.round(atMs), words: words.slice(0, 500), stepId: material.stepOf(step) }))
+  const fresh = told.map(({ clip, atMs, step, words }) => ({ clipId: material.clips[clip]!.id, atMs: Math.round(atMs), words: asCaptioned(material.input.clips[clip]!.cues, atMs, words), stepId: material.stepOf(step) }))
   const { standing, added, gone } = matchMoments(rows, fresh, () => true)
   if (gone.length) await tx.delete(pickups).where(inArray(pickups.id, gone.map(row => row.id)))
   const changed = standing.filter(({ old, fresh: one }) => (['atMs', 'words', 'stepId'] as const).some(key => old[key] !== one[key]))
   for (const { old, fresh: one } of changed) await tx.update(pickups).set({ ...one, version: old.version + 1 }).where(eq(pickups.id, old.id))
   if (added.length) await tx.insert(pickups).values(added.map(one => ({ ...one, sessionId, buildId: material.buildId, proposed: true })))
   return gone.length + changed.length + added.length
+}
+
+/** What was heard as the captions write it, with capitals and marks: as many captions as the heard words reach over. */
+function asCaptioned(cues: PencilMaterial['input']['clips'][number]['cues'], atMs: number, heard: string): string {
+  let text = ''
+  for (let at = cues.findIndex(cue => cue.startMs === atMs); at >= 0 && at < cues.length && text.length < heard.trim().length - 2; at++) text = `${text} ${cues[at]!.text}`.trim()
+  return (text || heard.trim()).replace(/\s+/g, ' ').slice(0, 500)
 }

@@ -12,7 +12,8 @@ export function confidenceWords(confidence: number): string {
   return 'a guess'
 }
 
-export const percent = (share: number): string => `${Math.round(share * 100)} %`
+/** Never nought: what is offered may be right. */
+export const percent = (share: number): string => share < 0.005 ? '< 1 %' : `${Math.round(share * 100)} %`
 
 /** Proposals that are almost certain. */
 export const nearlyCertain = (chapters: readonly ChapterView[]): ChapterView[] => chapters.filter(one => one.inking === 'pencilled' && (one.confidence ?? 0) >= NEARLY_CERTAIN)

@@ -15,6 +15,7 @@ describe('the table of keys', () => {
     ['j', {}, 'back'], ['K', {}, 'pause'], [' ', {}, 'toggle'], ['ArrowLeft', {}, 'second-back'], ['ArrowLeft', { shiftKey: true }, 'frame-back'],
     ['I', { shiftKey: true }, 'go-in'], ['ˆ', { altKey: true, code: 'KeyI' }, 'in'], ['z', { ctrlKey: true }, 'undo'], ['Z', { metaKey: true, shiftKey: true }, 'redo'],
     ['?', { shiftKey: true }, 'keys'], ['Backspace', {}, 'delete'], ['Enter', {}, 'tag'],
+    ['1', { code: 'Digit1' }, 'other-step'], ['&', { code: 'Digit1' }, 'other-step'], ['"', { code: 'Digit2', shiftKey: true }, 'other-operation'], ['ArrowDown', { shiftKey: true }, 'pencilled-after'], ['r', {}, 'retag'],
   ] as const)('reads %s %j as %s', (key, more, action) => {
     expect(press(key, more)).toBe(action)
   })

@@ -5,7 +5,7 @@ import type { FactUnit } from '#shared/types/trade'
 // 1 in = 25.4 mm, 1 ft = 12 in, °C = (°F − 32) × 5/9 exactly: NIST SP 811, B.8.
 describe('a fact as people read it', () => {
   it.each([
-    [9.525, 'mm', 'inch', '⅜ in'], [9.5, 'mm', 'inch', '⅜ in'], [9.5, 'mm', 'mm', '9.5 mm'], [3657.6, 'mm', 'inch', '12 ft'], [1949.45, 'mm', 'inch', '6 ft 4¾ in'],
+    [9.525, 'mm', 'inch', '⅜ in'], [9.5, 'mm', 'inch', '⅜ in'], [9.5, 'mm', 'mm', '9.5 mm'], [9, 'mm', 'inch', '≈ 23⁄64 in'], [3657.6, 'mm', 'inch', '12 ft'], [1949.45, 'mm', 'inch', '6 ft 4¾ in'],
     [12.5, 'deg', 'inch', '12.5°'], [45, 'min', 'mm', '45 min'], [0.5, 'min', 'mm', '30 s'], [720, 'min', 'mm', '12 h'], [4320, 'min', 'mm', '3 days'],
     [20, 'C', 'inch', '68 °F'], [20, 'C', 'mm', '20 °C'], [8, 'ratio', 'inch', '8 : 1'], [24, 'count', 'inch', '24'], [null, null, 'inch', null],
   ] as const)('%s %s in %s is %s', (value, unit, units, text) => {
