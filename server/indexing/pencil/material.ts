@@ -57,7 +57,8 @@ export function gather(speech: Speech, index: StepIndex, learned: readonly Learn
     const cue = speech.cues[i]!
     const next = speech.cues[i + 1]
     seconds[i] = (next && next.clip === cue.clip ? next.startMs - cue.startMs : cue.endMs - cue.startMs) / 1000
-    if (cue.first) seconds[i]! += Math.min(10, cue.startMs / 1000)
+    // The silence before it, as `gapMs` has it: the first cue of a portion may stand in the middle of a clip.
+    if (cue.first) seconds[i]! += Math.min(10, cue.gapMs / 1000)
     whole += seconds[i]!
   }
   const steps = hearSteps(speech, index, learned, day && { at: placesInDay(seconds, day), seconds })

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { gather } from '#server/indexing/pencil/material'
+import { takePortion } from '#server/indexing/pencil/portions'
 import { listen } from '#server/indexing/pencil/speech'
 import { indexSteps } from '#server/indexing/pencil/stepEvidence'
 import { clipOf, PARTS, STEPS, talk } from './support'
@@ -28,6 +29,11 @@ describe('what is gathered of a session', () => {
   it('gives cues their time to the next one in the clip, and the silence before the first, at most 10 s', () => {
     const speech = listen([clipOf(['plane the edge fair', 'glue the edge down'], { fromMs: 3000 }), clipOf(['sand the edge fair'], { fromMs: 60_000 })])
     expect([...gather(speech, index).seconds]).toEqual([7, 3.8, 13.8])
+  })
+
+  it('gives the first cue of a portion no more than the silence before it, in the middle of a clip', () => {
+    const speech = listen([clipOf(talk(1, 2))])
+    expect(gather(takePortion(speech, { from: 5, to: 8 }), index).seconds[0]).toBeCloseTo(4.2, 9)
   })
 
   it('says how near the beginning and the end of the session each cue is', () => {
