@@ -1,5 +1,5 @@
 import { type Token, tokenise } from '../words/tokenise'
-import { saidAt } from './rank'
+import { saidAt } from './hearing'
 import type { Concept } from './types'
 
 /** Words in context, with the ranges (UTF-16 offsets, end exclusive) of those that were asked for. */

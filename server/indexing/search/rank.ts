@@ -1,12 +1,15 @@
 import type { Inking, Operation } from '#shared/types/trade'
-import { type Token, tokenise } from '../words/tokenise'
-import { answers } from './askedFor'
-import type { Concept, Understanding, Way } from './types'
+import { ANSWER_WEIGHTS } from './answerWeights'
+import { ANSWER_FEATURES, ANSWER_K, type AnswerFeature, featuresOf, featuresOfTags, rarityIn, weightsOf } from './features'
+import { type Line, rowsOf } from './rows'
+import type { Frequencies, Understanding } from './types'
 
 /** A passage that may answer, with the tags of the chapter it lies in as they stand now. */
 export interface Candidate {
   id: string
   clipId: string
+  /** Caption file of its lines; lines of one file are read in one row. */
+  trackId?: string | null
   startMs: number
   endMs: number
   starts: number[]
@@ -20,135 +23,97 @@ export interface Ranked<Of extends Candidate = Candidate> {
   candidate: Of
   /** Higher is better; comparable within one question only. */
   score: number
-  /** Where the answer starts: the first of the two lines that say most of what was asked, ms on the clip. */
+  /** Where the answer starts, ms on the clip. */
   atMs: number
   /** Index of that line; -1 when the tags alone answered. */
   line: number
 }
 
-export interface Frequencies { passages: number, of: ReadonlyMap<string, number> }
+export type AnswerWeights = Readonly<Record<AnswerFeature, number>>
 
-/** BM25's usual constants; passages are of much the same length, so length counts for little. */
-const K = 1.2
-const B = 0.3
-const USUAL_WORDS = 70
-/** A tag set by a person is worth more than the word said once; one that the program proposes, less. */
-const INKED = 1.5
-const PENCILLED = 0.8
-/** A chapter tagged with all that was asked is an answer from its beginning; how near that counts, ms, and for how much. */
-const BEGINNING_MS = 10_000
-const BEGINNING = 1.25
-const TALK_OF_OTHER_TIMES = /\b(?:later|next time|next week|tomorrow|last time|last week|eventually|off camera|didn'?t film|going to have to)\b/i
-
-/** How telling a stem is: rarer counts more. Never below a tenth, so that nothing asked for is worth nothing. */
-export function weightOf(stem: string, frequencies: Frequencies): number {
-  const n = frequencies.of.get(stem) ?? 0
-  return Math.max(0.1, Math.log(1 + (frequencies.passages - n + 0.5) / (n + 0.5)))
-}
-
-/** A concept is as telling as the words asked with; when nobody says those, as the commonest of its other words. */
-export function weightOfConcept(concept: Concept, frequencies: Frequencies): number {
-  const finding = concept.ways.filter(way => way.finds)
-  const said = (way: Way) => Math.min(...way.stems.map(stem => frequencies.of.get(stem) ?? 0))
-  const way = finding.find(way => said(way) > 0) ?? finding[0]
-  if (!way) return 2
-  return Math.max(...way.stems.map(stem => weightOf(stem, frequencies)))
-}
+/** Lines near one another speak for one another: an answer is a run of lines. The reach of it, ms. */
+export const SMOOTH_MS = 18_000
+/** Answers nearer than this are one answer, ms. */
+const SPREAD_MS = 20_000
 
 /**
- * Ranks candidates by what is said and what is tagged: for each concept BM25-like weight of its words plus its
- * tags (inked over pencilled), more for passages that cover more of the question and say it close together,
- * less for talk of other times. Order: score, then clip and time, so that paging is stable.
+ * Ranks candidates by what is said about each of their lines and what their chapters are tagged with, weighed as
+ * labelled questions taught (`answerWeights.ts`). The lines of neighbouring candidates are read in one row, so that an
+ * answer that runs over the edge of a passage is found whole. Order: score, then clip and time, so that paging
+ * is stable.
  */
-export function rank<Of extends Candidate>(question: Understanding, candidates: Of[], frequencies: Frequencies): Ranked<Of>[] {
-  const weights = question.concepts.map(concept => weightOfConcept(concept, frequencies))
-  const all = weights.reduce((sum, weight) => sum + weight, 0) || 1
-  return candidates
-    .map(candidate => score(question, weights, all, candidate))
+export function rank<Of extends Candidate>(question: Understanding, candidates: Of[], frequencies: Frequencies, weights: AnswerWeights = ANSWER_WEIGHTS): Ranked<Of>[] {
+  const rows = rowsOf(candidates)
+  const rarity = rarityIn(rows)
+  const best = new Map<Of, Ranked<Of>>()
+  for (const row of rows) {
+    const { values, telling } = featuresOf(question, row, frequencies, rarity)
+    const scores = smooth(row.map(line => line.startMs), scoresOf(values, weights))
+    for (let from = 0; from < row.length;) {
+      const { candidate } = row[from]!
+      const to = from + candidate.lines.length
+      let top = from
+      for (let i = from; i < to; i++) if (scores[i]! > scores[top]!) top = i
+      // A stretch in which nothing asked for is said answers by its tags, as a whole, from its start.
+      const speaks = telling.subarray(from, to).some(value => value > 0)
+      const line = row[beginning(row, telling, from, top, to)]!
+      best.set(candidate, { candidate, score: scores[top]!, atMs: speaks ? line.startMs : candidate.startMs, line: speaks ? line.index : -1 })
+      from = to
+    }
+  }
+  const { weights: concepts, all } = weightsOf(question, frequencies)
+  for (const candidate of candidates) {
+    if (!best.has(candidate)) best.set(candidate, { candidate, score: scoresOf(featuresOfTags(question, candidate, concepts, all), weights)[0]!, atMs: candidate.startMs, line: -1 })
+  }
+  return [...best.values()]
+    .map(moment => ({ ...moment, score: Math.round(moment.score * 1e6) / 1e6 }))
     .sort((a, b) => b.score - a.score || compare(a.candidate.clipId, b.candidate.clipId) || a.candidate.startMs - b.candidate.startMs || compare(a.candidate.id, b.candidate.id))
+}
+
+/** Leaves out moments that lie next to a better one: seconds later on the same clip is no second answer. */
+export function spread<Of extends Ranked>(ranked: Of[]): Of[] {
+  const taken = new Map<string, number[]>()
+  return ranked.filter(({ candidate, atMs }) => {
+    const beside = taken.get(candidate.clipId) ?? []
+    if (beside.some(other => Math.abs(other - atMs) < SPREAD_MS)) return false
+    taken.set(candidate.clipId, [...beside, atMs])
+    return true
+  })
 }
 
 const compare = (a: string, b: string) => a < b ? -1 : a > b ? 1 : 0
 
-function score<Of extends Candidate>(question: Understanding, weights: number[], all: number, candidate: Of): Ranked<Of> {
-  const lines = candidate.lines.map(line => tokenise(line))
-  const length = lines.reduce((sum, line) => sum + line.length, 0)
-  const perLine = lines.map(() => 0)
-  let total = 0
-  let covered = 0
-  let spokenWeight = 0
-  let taggedWhole = candidate.chapter !== null && question.concepts.length > 0
-  question.concepts.forEach((concept, c) => {
-    const weight = weights[c]!
-    let heard = 0
-    lines.forEach((line, i) => {
-      const here = heardIn(concept, line, lines[i + 1])
-      heard += here
-      perLine[i]! += weight * Math.min(here, 1.2)
-    })
-    const spoken = heard * (K + 1) / (heard + K * (1 - B + B * length / USUAL_WORDS))
-    const tagged = taggedWith(concept, candidate)
-    if (!tagged) taggedWhole = false
-    total += weight * (spoken + tagged)
-    covered += weight * Math.min(1, Math.max(heard, tagged))
-    spokenWeight += weight * Math.min(1, heard)
-  })
-  const best = bestLine(perLine)
-  const together = best === -1 ? 0 : (perLine[best]! + (perLine[best + 1] ?? 0)) / all
-  let result = total * (0.35 + 0.65 * covered / all) + 0.5 * all * Math.min(1, together)
-  if (best !== -1) {
-    const around = candidate.lines.slice(best, best + 3).join(' ')
-    if (answers(question.askedFor, around)) result *= 1.25
-    if (TALK_OF_OTHER_TIMES.test(around)) result *= 0.7
+/** Lines this near the likeliest one may begin its answer, ms. */
+const BACK_MS = 3_000
+const ON_MS = 8_000
+/** Of the most telling line nearby: a line that says this share of what it says begins the answer. */
+const BEGINS = 0.7
+
+/** The first line about the likeliest one that says something of what was asked; lines `from` to `to` are its passage. */
+function beginning(row: Line[], telling: Float64Array, from: number, top: number, to: number): number {
+  const at = row[top]!.startMs
+  const near: number[] = []
+  for (let i = from; i < to; i++) if (row[i]!.startMs >= at - BACK_MS && row[i]!.startMs <= at + ON_MS) near.push(i)
+  const most = Math.max(...near.map(i => telling[i]!))
+  return most > 0 ? near.find(i => telling[i]! >= BEGINS * most)! : top
+}
+
+export function scoresOf(features: Float64Array, weights: AnswerWeights): Float64Array {
+  const row = ANSWER_FEATURES.map(name => weights[name])
+  const scores = new Float64Array(features.length / ANSWER_K)
+  for (let i = 0; i < scores.length; i++) for (let k = 0; k < ANSWER_K; k++) scores[i]! += row[k]! * features[i * ANSWER_K + k]!
+  return scores
+}
+
+/** The log of the likelihood about each line, nearer lines counting more; scores are logs of likelihoods. */
+export function smooth(starts: number[], scores: Float64Array): Float64Array {
+  const out = new Float64Array(scores.length)
+  for (let i = 0; i < scores.length; i++) {
+    let sum = 0
+    // Measured from the line's own score: the exponent of a bare score may be beyond any number.
+    for (let j = i; j < scores.length && starts[j]! - starts[i]! < SMOOTH_MS; j++) sum += Math.exp(scores[j]! - scores[i]!) * (1 - (starts[j]! - starts[i]!) / SMOOTH_MS)
+    for (let j = i - 1; j >= 0 && starts[i]! - starts[j]! < SMOOTH_MS; j--) sum += Math.exp(scores[j]! - scores[i]!) * (1 - (starts[i]! - starts[j]!) / SMOOTH_MS)
+    out[i] = scores[i]! + Math.log(sum)
   }
-  if (taggedWhole && candidate.startMs - candidate.chapter!.startMs < BEGINNING_MS) result *= BEGINNING
-  // A stretch of a tagged chapter in which nothing asked for is said answers as a whole, from its start.
-  const line = spokenWeight > 0 ? best : -1
-  return { candidate, score: Math.round(result * 1e6) / 1e6, atMs: line === -1 ? candidate.startMs : candidate.starts[line]!, line }
-}
-
-/** How much of a concept a line says; a phrase may run over into the next line. */
-function heardIn(concept: Concept, line: Token[], next: Token[] | undefined): number {
-  let heard = 0
-  for (const way of concept.ways) {
-    for (let i = 0; i < line.length; i++) if (saidAt(way, line, next, i)) heard += way.weight
-  }
-  return heard
-}
-
-/** True when a way is said from word `at` of a line on. */
-export function saidAt(way: Way, line: Token[], next: Token[] | undefined, at: number): boolean {
-  return line[at]!.stem === way.stems[0] && (way.stems.length === 1 || follows(way.stems, line, next, at))
-}
-
-/** The rest of a phrase within three words of its place: "chine log", "chine and the log". */
-function follows(stems: string[], line: Token[], next: Token[] | undefined, at: number): boolean {
-  const window = [...line.slice(at + 1, at + 1 + stems.length + 2), ...at + stems.length + 2 >= line.length ? next?.slice(0, stems.length) ?? [] : []]
-  return stems.slice(1).every(stem => window.some(token => token.stem === stem))
-}
-
-function taggedWith(concept: Concept, { chapter, tagStems }: Candidate): number {
-  if (!chapter) return 0
-  const trust = chapter.inking === 'inked' ? INKED : PENCILLED * (0.5 + 0.5 * (chapter.confidence ?? 0.5))
-  let best = 0
-  for (const tag of concept.tags) {
-    const name = tag.lexeme.slice(2)
-    const holds = { o: chapter.operation === name, s: chapter.stepId === name, p: chapter.partIds.includes(name), t: tagStems.has(name) }[tag.lexeme[0] as 'o' | 's' | 'p' | 't']
-    if (holds) best = Math.max(best, tag.weight)
-  }
-  return best * trust
-}
-
-/** The line with which the best pair of lines starts; a pair whose first line says nothing starts with the second. */
-function bestLine(perLine: number[]): number {
-  let best = -1
-  let most = 0
-  for (let i = 0; i < perLine.length; i++) {
-    const pair = perLine[i]! + (perLine[i + 1] ?? 0) * 0.9
-    if (perLine[i]! > 0 && pair > most + 1e-9) {
-      most = pair
-      best = i
-    }
-  }
-  return best
+  return out
 }

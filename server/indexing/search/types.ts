@@ -1,9 +1,10 @@
 import type { Operation } from '#shared/types/trade'
+import type { Meant } from './meanings'
 
 /** The names a question may use: of one build, or none when every build is searched. */
 export interface SearchPlan {
-  steps: { id: string, number: number, title: string }[]
-  parts: { id: string, name: string, aliases: string[] }[]
+  steps: { id: string, number: number, title: string, stage?: string, description?: string, /** Names of its parts. */ parts?: string[], materials?: string[] }[]
+  parts: { id: string, name: string, aliases: string[], material?: string }[]
 }
 
 /** One way of saying a concept: stems that must all occur in a passage, near one another when more than one. */
@@ -39,7 +40,16 @@ export interface Understanding {
   /** Words read as another, because nobody says the one typed. */
   corrections: { typed: string, read: string }[]
   concepts: Concept[]
+  /** Plain words that builders say otherwise (`meanings.ts`). */
+  meant: Meant[]
+  /** Topics of the shop that the question touches, with weights. */
+  topics: ReadonlyMap<number, number>
+  /** How far it is about each step of the plan, by id, 0 to 1. */
+  about: ReadonlyMap<string, number>
 }
+
+/** In how many passages stems are said: in one build, or everywhere. */
+export interface Frequencies { passages: number, of: ReadonlyMap<string, number> }
 
 /** Stem → word to read instead, found in the build's own vocabulary. */
 export type Spelling = ReadonlyMap<string, string>

@@ -1,12 +1,16 @@
 import type { Operation } from '#shared/types/trade'
 import { isStopWord, stemOf, stemsOf, type Token, tokenise } from '../words/tokenise'
+import { aboutSteps } from './aboutSteps'
 import { readAskedFor } from './askedFor'
+import { meantIn, topicsIn } from './meanings'
 import { distinct, LEXICON_STEMS, OPERATION_PHRASES, standsAt, TOOL_PHRASES, waysOfOperation, waysOfWord } from './phrases'
 import type { Concept, SearchPlan, Spelling, Understanding, Way } from './types'
 
 /** A question longer than this says nothing more that search could use, and would cost more. */
 const MOST_WORDS = 16
 const MOST_CONCEPTS = 8
+const MOST_LETTERS = 400
+const MOST_SPOKEN = 40
 
 interface NamedPart { id: string, name: string, names: string[][] }
 
@@ -54,9 +58,11 @@ export function understand(question: string, plan: SearchPlan, spelling: Spellin
     }
     at += asked.length
   }
+  const spoken = tokenise(question.slice(0, MOST_LETTERS)).slice(0, MOST_SPOKEN).map(token => spelling.has(token.stem) ? stemOf(spelling.get(token.stem)!) : token.stem)
   return {
     parts: [...found.parts].map(([id, name]) => ({ id, name })), steps: [...found.steps.values()], operations: [...found.operations],
     rest: found.rest, askedFor: readAskedFor(question), corrections, concepts,
+    meant: meantIn(spoken), topics: topicsIn(spoken), about: aboutSteps(question.slice(0, MOST_LETTERS), plan),
   }
 }
 
@@ -75,7 +81,7 @@ export function planStems(plan: SearchPlan): string[] {
 const FRAME = /\b(how) (?:long|wide|thick|deep|high|tall|far|big|large|close|tight|often|steep|hot|cold|warm)\b/gi
 
 function contentWords(question: string): Token[] {
-  return tokenise(question.slice(0, 400).replace(FRAME, '$1')).filter(token => !isStopWord(token.word)).slice(0, MOST_WORDS)
+  return tokenise(question.slice(0, MOST_LETTERS).replace(FRAME, '$1')).filter(token => !isStopWord(token.word)).slice(0, MOST_WORDS)
 }
 
 const saidByNumber = (question: string, number: number) => new RegExp(`\\bsteps?\\s*(?:no\\.?|number|#)?\\s*${number}\\b`, 'i').test(question)

@@ -1,8 +1,8 @@
 import { sql, type SQL } from 'drizzle-orm'
 import type { Inking, Operation } from '#shared/types/trade'
-import type { Candidate, Frequencies } from '../../indexing/search/rank'
-import { weightOfConcept } from '../../indexing/search/rank'
-import type { Concept, Understanding } from '../../indexing/search/types'
+import type { Candidate } from '../../indexing/search/rank'
+import { weightOfConcept } from '../../indexing/search/rarity'
+import type { Concept, Frequencies, Understanding } from '../../indexing/search/types'
 import type { Executor } from '../../database/client'
 import { builds, chapterParts, chapters, clips, memberships, passages, sessions } from '../../database/schema'
 
@@ -107,6 +107,7 @@ interface Row extends Record<string, unknown> {
   build_id: string
   session_id: string
   clip_id: string
+  track_id: string | null
   start_ms: number
   end_ms: number
   starts: number[]
@@ -128,7 +129,7 @@ async function findWith(executor: Executor, reading: Reading, filters: Filters, 
     : sql``
   // Passages are found and counted off by the text index alone; only those few are then joined and checked.
   const { rows } = await executor.execute<Row>(sql`
-    select p.id, p.build_id, p.session_id, p.clip_id, p.start_ms, p.end_ms, p.starts, p.lines,
+    select p.id, p.build_id, p.session_id, p.clip_id, p.track_id, p.start_ms, p.end_ms, p.starts, p.lines,
       c.id as chapter_id, c.start_ms as chapter_start, c.end_ms as chapter_end, c.step_id, c.operation, c.inking, c.confidence,
       case when c.id is not null then array(select part_id::text from ${chapterParts} where chapter_id = c.id) end as part_ids,
       case when c.id is not null then p.lexemes::text end as tags
@@ -136,7 +137,7 @@ async function findWith(executor: Executor, reading: Reading, filters: Filters, 
     left join ${chapters} c on c.id = p.chapter_id
     where ${stillMaySee(seer)}`)
   return rows.map(row => ({
-    id: row.id, buildId: row.build_id, sessionId: row.session_id, clipId: row.clip_id,
+    id: row.id, buildId: row.build_id, sessionId: row.session_id, clipId: row.clip_id, trackId: row.track_id,
     startMs: row.start_ms, endMs: row.end_ms, starts: row.starts, lines: row.lines,
     chapter: row.chapter_id ? { id: row.chapter_id, startMs: row.chapter_start, endMs: row.chapter_end, stepId: row.step_id, operation: row.operation, inking: row.inking, confidence: row.confidence, partIds: row.part_ids ?? [] } : null,
     tagStems: new Set(Array.from(row.tags?.matchAll(/'t:([^']*)'/g) ?? [], match => match[1]!)),

@@ -3,13 +3,13 @@ import type { SearchQuery } from '#shared/schemas/search'
 import type { SearchAnswer, Understood } from '#shared/types/search'
 import { DomainError } from '#shared/utils/errors'
 import { OPERATION_LEXICON } from '../../indexing/lexicon/operations'
-import { type Frequencies, rank, type Ranked } from '../../indexing/search/rank'
+import { rank, type Ranked, spread } from '../../indexing/search/rank'
 import { forgiven, nearest, type SpelledWord } from '../../indexing/search/spelling'
-import type { SearchPlan, Spelling, Understanding } from '../../indexing/search/types'
+import type { Frequencies, SearchPlan, Spelling, Understanding } from '../../indexing/search/types'
 import { understand, unknownWords } from '../../indexing/search/understand'
 import { isStopWord, tokenise } from '../../indexing/words/tokenise'
 import type { Database, Executor } from '../../database/client'
-import { parts, steps } from '../../database/schema'
+import { parts, stepParts, steps } from '../../database/schema'
 import { requireBuild } from '../access'
 import { type Filters, findCandidates, type FoundPassage, isHeard, readFrequencies, readLookalikes, type Seer, stemsAsked } from './finding'
 import { insteadOf } from './instead'
@@ -38,7 +38,7 @@ export async function search(database: Database, userId: string | null, query: S
     const filters: Filters = { buildId: query.build, stepId: query.step, partId: query.part, operation: query.operation, from: query.from, to: query.to }
 
     const found = question.concepts.length || query.step || query.part || query.operation ? await findCandidates(tx, question, frequencies, filters, seer) : []
-    const ranked = thin(rank(question, found, frequencies))
+    const ranked = thin(spread(rank(question, found, frequencies)))
     const start = startAfter(ranked, query.after)
     const page = ranked.slice(start, start + query.limit)
     const last = page.at(-1)
@@ -55,8 +55,11 @@ export async function search(database: Database, userId: string | null, query: S
 
 async function readPlan(executor: Executor, buildId: string): Promise<SearchPlan> {
   const [stepRows, partRows] = [
-    await executor.select({ id: steps.id, number: steps.number, title: steps.title }).from(steps).where(and(eq(steps.buildId, buildId), isNull(steps.archivedAt))).orderBy(steps.position),
-    await executor.select({ id: parts.id, name: parts.name, aliases: parts.aliases }).from(parts).where(and(eq(parts.buildId, buildId), isNull(parts.archivedAt))).orderBy(parts.position),
+    await executor.select({
+      id: steps.id, number: steps.number, title: steps.title, stage: steps.stage, description: steps.description, materials: steps.materials,
+      parts: sql<string[]>`array(select ${parts.name} from ${stepParts} join ${parts} on ${parts.id} = ${stepParts.partId} where ${stepParts.stepId} = ${steps.id} order by ${parts.position})`,
+    }).from(steps).where(and(eq(steps.buildId, buildId), isNull(steps.archivedAt))).orderBy(steps.position),
+    await executor.select({ id: parts.id, name: parts.name, aliases: parts.aliases, material: parts.material }).from(parts).where(and(eq(parts.buildId, buildId), isNull(parts.archivedAt))).orderBy(parts.position),
   ]
   return { steps: stepRows, parts: partRows }
 }

@@ -1,7 +1,8 @@
 import { pencilChapters } from '#server/indexing/pencil/pencil'
-import { ANSWER_FEATURES, featuresOf, K, rarityIn } from '#server/indexing/search/features'
+import { ANSWER_FEATURES, ANSWER_K as K, featuresOf, rarityIn } from '#server/indexing/search/features'
+import type { AnswerWeights } from '#server/indexing/search/rank'
 import { rowsOf } from '#server/indexing/search/rows'
-import { searchableSession } from '#server/indexing/search/sessionCandidates'
+import { searchableSession, type SearchableSession } from '#server/indexing/search/sessionCandidates'
 import { understand } from '#server/indexing/search/understand'
 import type { LabelledSession } from './load'
 
@@ -11,9 +12,13 @@ export interface AskedLines { build: string, q: string, starts: number[], featur
 /** Starts that count as right: from 5 s before the true span to its end, ms. */
 export const EARLY_MS = 5_000
 
-export function linesOf(session: LabelledSession): AskedLines[] {
+export function searchable(session: LabelledSession): SearchableSession {
   const clips = [{ cues: session.cues, durationMs: session.truth.durationMs }]
-  const { plan, candidates, frequencies } = searchableSession(session.steps, session.parts, clips, pencilChapters({ steps: session.steps, parts: session.parts, clips }))
+  return searchableSession(session.steps, session.parts, clips, pencilChapters({ steps: session.steps, parts: session.parts, clips }))
+}
+
+export function linesOf(session: LabelledSession): AskedLines[] {
+  const { plan, candidates, frequencies } = searchable(session)
   const rows = rowsOf(candidates)
   const rarity = rarityIn(rows)
   return session.truth.questions.map(({ q, startMs, endMs }) => {
@@ -22,7 +27,7 @@ export function linesOf(session: LabelledSession): AskedLines[] {
     const features = new Float64Array(starts.length * K)
     let at = 0
     for (const row of rows) {
-      const values = featuresOf(question, row, frequencies, rarity)
+      const { values } = featuresOf(question, row, frequencies, rarity)
       features.set(values, at)
       at += values.length
     }
@@ -30,62 +35,58 @@ export function linesOf(session: LabelledSession): AskedLines[] {
   })
 }
 
-/** Weights that make right lines likely: softmax over a session's lines, log of the mass on right ones, drawn towards nothing by `pull`. */
-export function fitAnswers(asked: AskedLines[], pull = 2, rounds = 400): number[] {
-  const sd = scales(asked)
+/**
+ * Weights that make right lines likely: softmax over a session's lines, log of the mass on right ones, every weight
+ * drawn towards nothing by `pull` (Adam over standardised features; the same data give the same weights).
+ */
+export function fitAnswers(asked: AskedLines[], pull = 5, rounds = 150): AnswerWeights {
+  const scale = scales(asked)
   const w = new Float64Array(K)
   const m = new Float64Array(K)
   const v = new Float64Array(K)
   for (let round = 1; round <= rounds; round++) {
     const gradient = new Float64Array(K)
-    for (const one of asked) {
-      const n = one.starts.length
-      const scores = new Float64Array(n)
-      let top = -Infinity
-      for (let i = 0; i < n; i++) {
-        let s = 0
-        for (let k = 0; k < K; k++) s += w[k]! * one.features[i * K + k]! / sd[k]!
-        scores[i] = s
-        if (s > top) top = s
-      }
-      let whole = 0
-      let right = 0
-      for (let i = 0; i < n; i++) {
-        scores[i] = Math.exp(scores[i]! - top)
-        whole += scores[i]!
-        if (one.right[i]) right += scores[i]!
-      }
-      if (!right) continue
-      for (let i = 0; i < n; i++) {
-        const g = scores[i]! / whole - (one.right[i] ? scores[i]! / right : 0)
-        for (let k = 0; k < K; k++) gradient[k]! += g * one.features[i * K + k]! / sd[k]!
-      }
-    }
+    for (const one of asked) addGradient(one, w, scale, gradient)
     for (let k = 0; k < K; k++) {
       const g = gradient[k]! + pull * w[k]!
       m[k] = 0.9 * m[k]! + 0.1 * g
       v[k] = 0.99 * v[k]! + 0.01 * g * g
-      w[k]! -= 0.05 * (m[k]! / (1 - 0.9 ** round)) / (Math.sqrt(v[k]! / (1 - 0.99 ** round)) + 1e-8)
+      w[k]! -= 0.1 * (m[k]! / (1 - 0.9 ** round)) / (Math.sqrt(v[k]! / (1 - 0.99 ** round)) + 1e-8)
     }
   }
-  return [...w].map((value, k) => value / sd[k]!)
+  return Object.fromEntries(ANSWER_FEATURES.map((name, k) => [name, Number((w[k]! / scale[k]!).toFixed(3))])) as unknown as AnswerWeights
 }
 
+function addGradient(one: AskedLines, w: Float64Array, scale: Float64Array, gradient: Float64Array): void {
+  const scores = one.starts.map((_, i) => {
+    let score = 0
+    for (let k = 0; k < K; k++) score += w[k]! * one.features[i * K + k]! / scale[k]!
+    return score
+  })
+  const top = Math.max(...scores)
+  const likely = scores.map(score => Math.exp(score - top))
+  const whole = likely.reduce((sum, value) => sum + value, 0)
+  const right = likely.reduce((sum, value, i) => one.right[i] ? sum + value : sum, 0)
+  if (!right) return
+  likely.forEach((value, i) => {
+    const g = value / whole - (one.right[i] ? value / right : 0)
+    for (let k = 0; k < K; k++) gradient[k]! += g * one.features[i * K + k]! / scale[k]!
+  })
+}
+
+/** Standard deviation of every feature. */
 function scales(asked: AskedLines[]): Float64Array {
-  const sd = new Float64Array(K)
-  for (let k = 0; k < K; k++) {
-    let sum = 0
-    let squares = 0
-    let n = 0
-    for (const one of asked) for (let i = 0; i < one.starts.length; i++) {
-      const x = one.features[i * K + k]!
-      sum += x
-      squares += x * x
-      n++
+  const sums = new Float64Array(K)
+  const squares = new Float64Array(K)
+  let n = 0
+  for (const one of asked) {
+    for (let i = 0; i < one.starts.length; i++, n++) {
+      for (let k = 0; k < K; k++) {
+        const x = one.features[i * K + k]!
+        sums[k]! += x
+        squares[k]! += x * x
+      }
     }
-    sd[k] = Math.sqrt(Math.max(1e-6, squares / n - (sum / n) ** 2))
   }
-  return sd
+  return sums.map((sum, k) => Math.sqrt(Math.max(1e-6, squares[k]! / n - (sum / n) ** 2)))
 }
-
-export const named = (weights: number[]) => Object.fromEntries(ANSWER_FEATURES.map((name, k) => [name, Number(weights[k]!.toFixed(3))]))

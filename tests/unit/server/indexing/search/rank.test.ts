@@ -1,13 +1,14 @@
 import { describe, expect, it } from 'vitest'
 import { markWords } from '#server/indexing/search/mark'
-import { type Candidate, rank, weightOf } from '#server/indexing/search/rank'
+import { type Candidate, rank } from '#server/indexing/search/rank'
+import { weightOf } from '#server/indexing/search/rarity'
 import type { SearchPlan } from '#server/indexing/search/types'
 import { understand } from '#server/indexing/search/understand'
 
 const plan: SearchPlan = { steps: [], parts: [{ id: 'bow', name: 'bow transom', aliases: [] }, { id: 'chine', name: 'chine log', aliases: [] }] }
 const frequencies = { passages: 1000, of: new Map([['glue', 300], ['transom', 60], ['chine', 80], ['log', 90], ['epoxi', 200], ['sapel', 3], ['clamp', 150]]) }
 const passage = (id: string, lines: string[], chapter: Partial<NonNullable<Candidate['chapter']>> | null = null, startMs = 60_000): Candidate => ({
-  id, clipId: 'clip', startMs, endMs: startMs + lines.length * 4000, starts: lines.map((_, i) => startMs + i * 4000), lines, tagStems: new Set(),
+  id, clipId: `clip-${id}`, startMs, endMs: startMs + lines.length * 4000, starts: lines.map((_, i) => startMs + i * 4000), lines, tagStems: new Set(),
   chapter: chapter && { id: `c-${id}`, startMs: 0, endMs: 600_000, stepId: null, operation: 'none', inking: 'inked', confidence: null, partIds: [], ...chapter },
 })
 const order = (question: string, candidates: Candidate[]) => rank(understand(question, plan), candidates, frequencies).map(moment => moment.candidate.id)
@@ -38,7 +39,7 @@ describe('rank', () => {
     expect(order('glue the chine log', [passage('later', ['later we will glue the chine log']), passage('now', ['so we now glue the chine log'])])).toEqual(['now', 'later'])
   })
   it('starts where the answer starts', () => {
-    const [moment] = rank(understand('chine log glue', plan), [passage('p', ['morning all', 'the kettle is on', 'so the glue goes on', 'all along the chine log', 'done'])], frequencies)
+    const [moment] = rank(understand('chine log glue', plan), [passage('p', ['morning all', 'the kettle is on', 'so the glue goes on the chine log', 'all along the edge', 'done'])], frequencies)
     expect(moment).toMatchObject({ atMs: 68_000, line: 2 })
   })
   it('starts at the passage when only tags answer', () => {

@@ -1,0 +1,36 @@
+import { type Token, tokenise } from '../words/tokenise'
+import { meaningsIn, topicsIn } from './meanings'
+import type { Candidate } from './rank'
+
+/** One caption line of a candidate, read once. */
+export interface Line<Of extends Candidate = Candidate> {
+  candidate: Of
+  /** Its index among the candidate's lines. */
+  index: number
+  startMs: number
+  text: string
+  tokens: Token[]
+  stems: string[]
+  meanings: ReadonlySet<number>
+  topics: ReadonlyMap<number, number>
+}
+
+/**
+ * What is said on each clip, in order of time, as far as candidates hold it: answers begin where they begin, not
+ * where passages happen to be cut. One row a caption file.
+ */
+export function rowsOf<Of extends Candidate>(candidates: Of[]): Line<Of>[][] {
+  const rows = new Map<string, Of[]>()
+  for (const candidate of candidates) {
+    if (!candidate.lines.length) continue
+    const key = `${candidate.clipId} ${candidate.trackId ?? ''}`
+    const row = rows.get(key)
+    if (row) row.push(candidate)
+    else rows.set(key, [candidate])
+  }
+  return [...rows.values()].map(row => row.sort((a, b) => a.startMs - b.startMs || (a.id < b.id ? -1 : 1)).flatMap(candidate => candidate.lines.map((text, index) => {
+    const tokens = tokenise(text)
+    const stems = tokens.map(token => token.stem)
+    return { candidate, index, startMs: candidate.starts[index]!, text, tokens, stems, meanings: meaningsIn(stems), topics: topicsIn(stems) }
+  })))
+}
