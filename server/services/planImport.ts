@@ -14,6 +14,7 @@ import { readPartsTable } from '../indexing/plan/readParts'
 import { readPlanTable } from '../indexing/plan/readPlan'
 import { readTable, unreadable } from '../indexing/plan/table'
 import { writeParts, writePlan } from '../indexing/plan/writePlan'
+import { enqueuePencillingOfBuild } from './pencil/queue'
 import { linkParts, readPlanView } from './plan'
 import { lockPlan, writeOrder } from './planOrder'
 
@@ -42,6 +43,8 @@ export async function importTable(database: Database, buildId: string, source: P
     if (comparison) await applySteps(tx, buildId, plan, comparison)
     if (placings) await applyParts(tx, buildId, plan, placings)
     const count = (outcome: string) => preview.rows.filter(row => row.outcome === outcome).length
+    // What was filmed before there was a plan is told by it now.
+    if (count('new') + count('changed')) await enqueuePencillingOfBuild(tx, buildId)
     return { what: preview.what, added: count('new'), changed: count('changed'), same: count('same'), newParts: preview.newParts.length }
   })
 }

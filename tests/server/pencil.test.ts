@@ -94,6 +94,17 @@ describe('pencilling a session', () => {
   })
 })
 
+describe('another plan', () => {
+  it('is reason to pencil the build\'s sessions again; the same plan is not', async () => {
+    await spokenSession()
+    const waiting = () => database.database.select({ id: pencillings.sessionId, state: pencillings.state }).from(pencillings).where(eq(pencillings.sessionId, session.id))
+    await importTable(database.database, build.id, { file: readFileSync(demoBuild.planFile).toString('base64') })
+    expect(await waiting()).toEqual([])
+    await importTable(database.database, build.id, { text: 'number,stage,title\n1,Hull,Lay the keel on the shop floor\n' })
+    expect(await waiting()).toEqual([{ id: session.id, state: 'waiting' }])
+  })
+})
+
 describe('what people do', () => {
   beforeAll(async () => {
     await spokenSession()
@@ -200,9 +211,5 @@ describe('what people do', () => {
     expect((await db.select().from(facts).where(eq(facts.sessionId, session.id))).map(one => one.id).sort()).toEqual([aside!.id, mended!.id].sort())
     expect(await db.select().from(chapters).where(and(eq(chapters.sessionId, session.id), eq(chapters.proposed, true)))).toEqual([])
     expect(await db.select().from(pickups).where(eq(pickups.sessionId, session.id))).toEqual([])
-  })
-
-  it('has no task of its own until captions come', async () => {
-    expect(await database.database.select().from(pencillings)).toEqual([])
   })
 })

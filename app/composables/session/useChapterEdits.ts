@@ -43,6 +43,8 @@ export function useChapterEdits({ sessionId, me, steps, say }: Input) {
   const redoable = shallowRef<Done[]>([])
   /** The last thing that somebody else did. */
   const news = ref('')
+  /** Undo and redo that were asked for while something was on its way. */
+  const later: ('undo' | 'redo')[] = []
   let sending = false
   let settled = 0
 
@@ -58,7 +60,12 @@ export function useChapterEdits({ sessionId, me, steps, say }: Input) {
 
   async function send(): Promise<void> {
     const first = queue.value[0]
-    if (sending || conflict.value || !first) return
+    if (sending || conflict.value) return
+    if (!first) {
+      const kind = later.shift()
+      if (kind) void reverse(kind)
+      return
+    }
     sending = true
     try {
       const before = touchedBy(first.edit, base.value)
@@ -107,6 +114,8 @@ export function useChapterEdits({ sessionId, me, steps, say }: Input) {
 
   function drop(one: Waiting): void {
     queue.value = queue.value.filter(other => other !== one)
+    // What was to be undone after it is no longer what they had in mind.
+    later.length = 0
     one.answer(false)
   }
 
@@ -169,8 +178,8 @@ export function useChapterEdits({ sessionId, me, steps, say }: Input) {
   }
 
   async function reverse(kind: 'undo' | 'redo'): Promise<void> {
-    // What is still on its way has no versions yet.
-    if (queue.value.length) return void say('Still saving; try again in a moment.')
+    // What is still on its way has no versions yet: taken back as soon as it has.
+    if (queue.value.length) return void later.push(kind)
     const stack = kind === 'undo' ? undoable : redoable
     const done = stack.value.at(-1)
     if (!done) return void say(kind === 'undo' ? 'Nothing to undo.' : 'Nothing to redo.')
