@@ -3,7 +3,7 @@ import { heardIn, taggedWith } from './hearing'
 import { likeness } from './likeness'
 import { weightOfConcept } from './rarity'
 import type { Line } from './rows'
-import type { Frequencies, Understanding } from './types'
+import type { AskedFor, Frequencies, Understanding } from './types'
 
 /**
  * What speaks for an answer beginning at a line. `said`: the question's words (and the trade's words for them)
@@ -22,7 +22,7 @@ const CORE_MS = 9_000
 const BESIDE_MS = 22_000
 const ANSWER_MS = 20_000
 
-const ELSEWHEN = /\b(?:later|next time|next week|tomorrow|last time|last week|eventually|off camera|didn'?t film|going to have to)\b/i
+const ELSEWHEN = /\b(?:later|next time|next week|tomorrow|last time|last week|eventually|off camera|can wait|didn'?t film|going to have to)\b/i
 const WHY = /\b(?:because|'?cause|cuz|reasons?|so that|otherwise|that way|on account of|why|since|if you|or (?:else|it|you|she)|what happens|never|don'?t|the trouble|problem)\b/i
 const METHOD = /\b(?:what (?:i|you|we|one) (?:do|does|did)|the (?:trick|way|thing|answer|fix|idea)|you (?:just|want|take|put|get|go|can|press|see)|i (?:take|put|use|just|go|set|lay|made|turned|took|blow|run|walk|sight)|i'?m (?:going|just|gonna)|i'?ve got (?:a|this|the)|this (?:little )?(?:stick|block|board|thing)|and then|until|till)\b/i
 
@@ -35,7 +35,7 @@ export function featuresOf(question: Understanding, row: Line[], frequencies: Fr
   const plain = meantWords(question, row, rarity)
   const topics = sharedTopics(question, row, rarity)
   const telling = Float64Array.from(row, (_, i) => words.heard.reduce((sum, values, c) => sum + words.weights[c]! * values[i]! / words.all, 0) + plain.otherwise.reduce((sum, values) => sum + values[i]! / plain.all, 0))
-  let tags = new Float64Array(ANSWER_K)
+  let tags: Float64Array = new Float64Array(ANSWER_K)
   row.forEach((line, i) => {
     const at = i * ANSWER_K
     const core = stretchAbout(row, i, -CORE_MS, CORE_MS)
@@ -64,7 +64,7 @@ export function featuresOf(question: Understanding, row: Line[], frequencies: Fr
     const text = row.slice(i, stretchAbout(row, i, 0, ANSWER_MS)[1]).map(line => line.text)
     const answer = text.join(' ')
     if (question.askedFor === 'reason') out[at + F.why] = Number(WHY.test(answer))
-    else if (answers(question.askedFor, answer)) out[at + F.kind] = 1
+    else if (answers(question.askedFor, answer)) out[at + F.kind] = rarity.kind
     if (question.askedFor === 'manner') out[at + F.method] = Number(METHOD.test(answer))
     out[at + F.elsewhen] = Number(ELSEWHEN.test(text.slice(0, 3).join(' ')))
     if (line.candidate !== row[i - 1]?.candidate) tags = featuresOfTags(question, line.candidate, words.weights, words.all)
@@ -146,17 +146,19 @@ function most(values: number[], [from, to]: Stretch): number {
 }
 
 /** How telling meanings and topics are, over the lines at hand: 0 to about 1. */
-export interface Rarity { meaning(id: number): number, topic(id: number): number }
+export interface Rarity { meaning(id: number): number, topic(id: number): number, /** Of the kind of answer that is asked for: an angle is seldom given, a number often. */ kind: number }
 
-export function rarityIn(rows: Line[][]): Rarity {
+export function rarityIn(rows: Line[][], askedFor: AskedFor | null): Rarity {
   let lines = 0
+  let kind = 0
   const meanings = new Map<number, number>()
   const topics = new Map<number, number>()
   for (const line of rows.flat()) {
     lines++
+    if (answers(askedFor, line.text)) kind++
     for (const meaning of line.meanings) meanings.set(meaning, (meanings.get(meaning) ?? 0) + 1)
     for (const topic of line.topics.keys()) topics.set(topic, (topics.get(topic) ?? 0) + 1)
   }
   const rare = (n: number) => Math.log(1 + (lines - n + 0.5) / (n + 0.5)) / 4
-  return { meaning: id => rare(meanings.get(id) ?? 0), topic: id => rare(topics.get(id) ?? 0) }
+  return { kind: rare(kind), meaning: id => rare(meanings.get(id) ?? 0), topic: id => rare(topics.get(id) ?? 0) }
 }

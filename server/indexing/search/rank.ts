@@ -44,7 +44,7 @@ const SPREAD_MS = 20_000
  */
 export function rank<Of extends Candidate>(question: Understanding, candidates: Of[], frequencies: Frequencies, weights: AnswerWeights = ANSWER_WEIGHTS): Ranked<Of>[] {
   const rows = rowsOf(candidates)
-  const rarity = rarityIn(rows)
+  const rarity = rarityIn(rows, question.askedFor)
   const best = new Map<Of, Ranked<Of>>()
   for (const row of rows) {
     const { values, telling } = featuresOf(question, row, frequencies, rarity)
@@ -109,11 +109,15 @@ export function scoresOf(features: Float64Array, weights: AnswerWeights): Float6
 export function smooth(starts: number[], scores: Float64Array): Float64Array {
   const out = new Float64Array(scores.length)
   for (let i = 0; i < scores.length; i++) {
+    let from = i
+    while (from > 0 && starts[i]! - starts[from - 1]! < SMOOTH_MS) from--
+    let to = i + 1
+    while (to < starts.length && starts[to]! - starts[i]! < SMOOTH_MS) to++
+    // Measured from the highest score there: the exponent of a bare score may be beyond any number.
+    const top = Math.max(...scores.subarray(from, to))
     let sum = 0
-    // Measured from the line's own score: the exponent of a bare score may be beyond any number.
-    for (let j = i; j < scores.length && starts[j]! - starts[i]! < SMOOTH_MS; j++) sum += Math.exp(scores[j]! - scores[i]!) * (1 - (starts[j]! - starts[i]!) / SMOOTH_MS)
-    for (let j = i - 1; j >= 0 && starts[i]! - starts[j]! < SMOOTH_MS; j--) sum += Math.exp(scores[j]! - scores[i]!) * (1 - (starts[i]! - starts[j]!) / SMOOTH_MS)
-    out[i] = scores[i]! + Math.log(sum)
+    for (let j = from; j < to; j++) sum += Math.exp(scores[j]! - top) * (1 - Math.abs(starts[j]! - starts[i]!) / SMOOTH_MS)
+    out[i] = top + Math.log(Math.max(sum, Number.MIN_VALUE))
   }
   return out
 }

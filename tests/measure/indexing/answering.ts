@@ -20,9 +20,9 @@ export function searchable(session: LabelledSession): SearchableSession {
 export function linesOf(session: LabelledSession): AskedLines[] {
   const { plan, candidates, frequencies } = searchable(session)
   const rows = rowsOf(candidates)
-  const rarity = rarityIn(rows)
   return session.truth.questions.map(({ q, startMs, endMs }) => {
     const question = understand(q, plan)
+    const rarity = rarityIn(rows, question.askedFor)
     const starts = rows.flatMap(row => row.map(line => line.startMs))
     const features = new Float64Array(starts.length * K)
     let at = 0
