@@ -104,7 +104,7 @@ export function decode(lattice: Lattice, marginals: Marginals, seconds: Float64A
         const kindGained = (kind: number) => kindTime[to * KINDS + kind]! - kindTime[from * KINDS + kind]!
         let kind = 0
         for (let k = 1; k < W; k++) if (kindGained(k) > kindGained(kind)) kind = k
-        let stepless = W
+        let stepless: number = W
         for (let k = W + 1; k < KINDS; k++) if (kindGained(k) > kindGained(stepless)) stepless = k
         const work = S ? gained(step) + options.operation * kindGained(kind) : -Infinity
         const none = gained(S) + options.operation * kindGained(stepless)

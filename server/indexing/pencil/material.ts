@@ -40,8 +40,16 @@ export interface Material {
 /** Longest chapter that is weighed as one, s; a longer one is still found when it is all there is. */
 const LONGEST_S = 240
 
-/** `day` says where a portion stands in a session whose steps are known; without it nothing is made of that. */
-export function gather(speech: Speech, index: StepIndex, learned: readonly Learned[] = [], fixed: FixedStretch[] = [], day?: { from: number, whole: number }): Material {
+/** Where a portion stands in its session, in cues; `ordered` when the day's steps are known, and go down the plan. */
+export interface PlaceInDay { from: number, whole: number, ordered: boolean }
+
+/** How long a greeting and a goodbye colour what is said, s: less in a short session. */
+const GREETING_S = 25
+const GOODBYE_S = 20
+const GREETING_SHARE = 0.03
+
+/** `day` is left out for a session that is weighed whole and of which nothing is known. */
+export function gather(speech: Speech, index: StepIndex, learned: readonly Learned[] = [], fixed: FixedStretch[] = [], day?: PlaceInDay): Material {
   const S = index.steps.length
   const n = speech.cues.length
   const kinds = hearKinds(speech)
@@ -61,12 +69,16 @@ export function gather(speech: Speech, index: StepIndex, learned: readonly Learn
     if (cue.first) seconds[i]! += Math.min(10, cue.gapMs / 1000)
     whole += seconds[i]!
   }
-  const steps = hearSteps(speech, index, learned, day && { at: placesInDay(seconds, day), seconds })
+  const steps = hearSteps(speech, index, learned, day?.ordered ? { at: placesInDay(seconds, day), seconds } : undefined)
+  const first = !day || day.from === 0
+  const last = !day || day.from + n >= day.whole
+  const greeting = Math.min(GREETING_S, Math.max(3, whole * GREETING_SHARE))
+  const goodbye = greeting * GOODBYE_S / GREETING_S
   let passed = 0
   for (let i = 0; i < n; i++) {
-    start[i] = Math.exp(-passed / 25)
+    start[i] = first ? Math.exp(-passed / greeting) : 0
     passed += seconds[i]!
-    end[i] = Math.exp(-Math.max(0, whole - passed) / 20)
+    end[i] = last ? Math.exp(-Math.max(0, whole - passed) / goodbye) : 0
     let most = 0
     for (let s = 0; s < S; s++) {
       const at = (i * S + s) * KS
@@ -83,7 +95,7 @@ export function gather(speech: Speech, index: StepIndex, learned: readonly Learn
 }
 
 /** How much of the day has passed at each cue, 0 to 1. `from` and `whole` are cues: what came before, and all. */
-function placesInDay(seconds: Float64Array, day: { from: number, whole: number }): Float64Array {
+function placesInDay(seconds: Float64Array, day: PlaceInDay): Float64Array {
   const all = seconds.reduce((sum, value) => sum + value, 0)
   const share = seconds.length / Math.max(1, day.whole)
   let passed = 0

@@ -59,7 +59,7 @@ export function pencilChapters(input: PencilInput, fitted: Fitted = FITTED): Pen
   let before: PlanStep | null = null
   for (const portion of portionsOf(speech, fixed)) {
     const mine = fixed.filter(({ from, to }) => from >= portion.from && to <= portion.to).map(stretch => ({ ...stretch, from: stretch.from - portion.from, to: stretch.to - portion.from }))
-    const material = narrow(gather(takePortion(speech, portion), index, input.learned ?? [], mine, known.length ? { from: portion.from, whole: speech.cues.length } : undefined), weights, MOST_STEPS)
+    const material = narrow(gather(takePortion(speech, portion), index, input.learned ?? [], mine, { from: portion.from, whole: speech.cues.length, ordered: known.length > 0 }), weights, MOST_STEPS)
     const lattice = latticeOf(material, weights, before ? material.index.steps.indexOf(before) + 1 : 0)
     const marginals = marginalsOf(lattice, material.speech.cues.length)
     const decoded = decode(lattice, marginals, material.seconds, DECODING)

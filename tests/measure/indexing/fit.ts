@@ -13,7 +13,7 @@ export function lessonOf(session: LabelledSession, ticked = false): Lesson {
   const steps = ticked ? session.steps.filter(step => session.truth.chapters.some(chapter => chapter.step === step.number)) : session.steps
   const speech = listen([{ cues: session.cues }])
   const starts = session.truth.chapters.map(chapter => speech.cues.findIndex(cue => cue.startMs >= chapter.startMs - 60))
-  const material = gather(speech, indexSteps(steps, session.parts), [], [], ticked ? { from: 0, whole: speech.cues.length } : undefined)
+  const material = gather(speech, indexSteps(steps, session.parts), [], [], { from: 0, whole: speech.cues.length, ordered: ticked })
   material.nodes = [...new Set([...material.nodes, ...starts.filter(cue => cue >= 0)])].sort((a, b) => a - b)
   const truth = session.truth.chapters.flatMap((chapter, at) => {
     const from = at ? starts[at]! : 0
