@@ -18,6 +18,8 @@ interface Input { player: Player, captions: Captions, chapters: () => ChapterVie
 export function useTranscript({ player, captions, chapters, list, pinned }: Input) {
   const rows = computed(() => layTranscript(player.placed.value, captions.cues.value, chapters()))
   const current = computed(() => rowAt(rows.value, player.clipId.value, player.clipMs.value))
+  /** What is read beside the picture: before the first words of a clip, those. */
+  const near = computed(() => current.value >= 0 ? current.value : rows.value.findIndex(row => row.cue.clipId === player.clipId.value))
   const following = ref(true)
   const heights = new Map<string, number>()
 
@@ -47,16 +49,16 @@ export function useTranscript({ player, captions, chapters, list, pinned }: Inpu
     if (index < 0 || !list.value?.offsetParent) return
     virtual.value.scrollToIndex(index, { align })
   }
-  watch(current, index => following.value && reveal(index), { flush: 'post' })
+  watch(near, index => following.value && reveal(index), { flush: 'post' })
   watch(() => rows.value.length, async () => {
     await nextTick()
-    if (following.value) reveal(current.value)
+    if (following.value) reveal(near.value)
   })
   // What stands above the list comes and goes: what is said stays in sight.
-  useResizeObserver(list, () => following.value && reveal(current.value))
+  useResizeObserver(list, () => following.value && reveal(near.value))
   function follow(): void {
     following.value = true
-    reveal(current.value)
+    reveal(near.value)
   }
   /** The reader's own hand on the list. */
   function scrolledByHand(): void {

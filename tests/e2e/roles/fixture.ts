@@ -40,8 +40,9 @@ export async function makeFixture(database: Database, people: Awaited<ReturnType
   await makeChapter(database, clip, { stepId: step.id })
   const [cue] = await makeCues(database, clip, ['this is the knee'])
   const track = cue!.trackId
-  const fact = await makeFact(database, clip)
-  const pickup = await makePickup(database, clip)
+  // Touched by a person: what is the program's own goes when it finds that nobody says it.
+  const fact = await makeFact(database, clip, { proposed: false })
+  const pickup = await makePickup(database, clip, { proposed: false })
   const storage = productStorage()
   let span = 1000
   let stepsMade = 0
