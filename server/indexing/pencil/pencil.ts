@@ -70,7 +70,7 @@ export function pencilChapters(input: PencilInput, fitted: Fitted = FITTED): Pen
 }
 
 /** Steps weighed in one portion of a session; what nobody speaks of there is left out. */
-const MOST_STEPS = 40
+const MOST_STEPS = 30
 
 /** Chosen on the labelled sessions: what an operation and a well-placed turn are worth, in seconds of the right step. */
 export const DECODING = { operation: 0.75, turn: 20, bar: 0.4 }
