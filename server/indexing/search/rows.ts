@@ -29,8 +29,23 @@ export function rowsOf<Of extends Candidate>(candidates: Of[]): Line<Of>[][] {
     else rows.set(key, [candidate])
   }
   return [...rows.values()].map(row => row.sort((a, b) => a.startMs - b.startMs || (a.id < b.id ? -1 : 1)).flatMap(candidate => candidate.lines.map((text, index) => {
-    const tokens = tokenise(text)
-    const stems = tokens.map(token => token.stem)
-    return { candidate, index, startMs: candidate.starts[index]!, text, tokens, stems, meanings: meaningsIn(stems), topics: topicsIn(stems) }
+    return { candidate, index, startMs: candidate.starts[index]!, ...readText(text) }
   })))
+}
+
+type ReadText = Pick<Line, 'text' | 'tokens' | 'stems' | 'meanings' | 'topics'>
+const read = new Map<string, ReadText>()
+/** Lines kept read: those of some hours of captions. Emptied when full, so that odd input cannot fill the memory. */
+const REMEMBERED = 10_000
+
+/** Reading a line costs far more than weighing it, and the same lines are candidates again and again. */
+function readText(text: string): ReadText {
+  const known = read.get(text)
+  if (known) return known
+  const tokens = tokenise(text)
+  const stems = tokens.map(token => token.stem)
+  const line = { text, tokens, stems, meanings: meaningsIn(stems), topics: topicsIn(stems) }
+  if (read.size >= REMEMBERED) read.clear()
+  read.set(text, line)
+  return line
 }

@@ -36,8 +36,14 @@ export function linesOf(session: LabelledSession): AskedLines[] {
 }
 
 /**
+ * What a weight is drawn towards where labelled questions say little: few of them have talk of other days about their
+ * words, but what "can wait" is never how it was done; and who asks for a measure wants one.
+ */
+const PRIOR: Partial<AnswerWeights> = { elsewhen: -2.5, kind: 3 }
+
+/**
  * Weights that make right lines likely: softmax over a session's lines, log of the mass on right ones, every weight
- * drawn towards nothing by `pull` (Adam over standardised features; the same data give the same weights).
+ * drawn towards its prior (mostly nothing) by `pull` (Adam over standardised features; the same data give the same weights).
  */
 export function fitAnswers(asked: AskedLines[], pull = 5, rounds = 150): AnswerWeights {
   const scale = scales(asked)
@@ -48,7 +54,7 @@ export function fitAnswers(asked: AskedLines[], pull = 5, rounds = 150): AnswerW
     const gradient = new Float64Array(K)
     for (const one of asked) addGradient(one, w, scale, gradient)
     for (let k = 0; k < K; k++) {
-      const g = gradient[k]! + pull * w[k]!
+      const g = gradient[k]! + pull * (w[k]! - (PRIOR[ANSWER_FEATURES[k]!] ?? 0) * scale[k]!)
       m[k] = 0.9 * m[k]! + 0.1 * g
       v[k] = 0.99 * v[k]! + 0.01 * g * g
       w[k]! -= 0.1 * (m[k]! / (1 - 0.9 ** round)) / (Math.sqrt(v[k]! / (1 - 0.99 ** round)) + 1e-8)
