@@ -66,5 +66,5 @@ describe('ask', () => {
     const end = await refused(...args)
     expect(end?.code).toBe(2)
     expect(end!.said.trim().split('\n')).toHaveLength(1)
-  })
+  }, 30_000)
 })

@@ -6,7 +6,7 @@ import { answerFigures, tallyAnswers } from '../../../../measure/indexing/questi
 
 const step = (number: number, title: string, description: string) => ({ number, stage: '', title, description, parts: [], materials: [] })
 const STEPS = [step(1, 'Steam the ribs', 'Bend them hot over the former.'), step(2, 'Hang the rudder', 'Bolt the pintles to the blade.')]
-const lines = (texts: string[], from: number) => texts.map((text, i) => ({ startMs: from + i * 4000, endMs: from + i * 4000 + 3800, text }))
+const lines = (texts: string[], from: number) => texts.map((text, i) => ({ startMs: from + i * 2500, endMs: from + i * 2500 + 2400, text }))
 const chapter = (startMs: number, endMs: number, number: number): PencilledChapter => ({ clip: 0, startMs, endMs, step: number, operation: 'shape', parts: [], confidence: 0.9, evidence: [], otherSteps: [], otherOperations: [], fixed: false })
 const CLIPS = [{ cues: [
   ...lines(['now this comes out of the box', 'and it goes round in one go', 'you have ten seconds for it', 'and hold it there'], 0),
@@ -19,7 +19,7 @@ describe('a session that is asked', () => {
     expect(answersIn(session, 'how are the ribs bent')[0]).toMatchObject({ clip: 0, step: 1 })
     expect(answersIn(session, 'how is the rudder attached')[0]).toMatchObject({ clip: 0, step: 2 })
   })
-  it('begins an answer with the line that says it', () => expect(answersIn(session, 'how big is the washer')[0]).toMatchObject({ startMs: 64_000 }))
+  it('begins an answer with the line that says it', () => expect(answersIn(session, 'how big is the washer')[0]).toMatchObject({ startMs: 62_500 }))
   it('counts passages as the site does', () => expect(session.frequencies).toMatchObject({ passages: 2 }))
 })
 
