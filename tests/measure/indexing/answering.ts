@@ -35,6 +35,8 @@ export function linesOf(session: LabelledSession): AskedLines[] {
   })
 }
 
+const ELSEWHEN_AT_MOST = -0.4
+
 /**
  * What a weight is drawn towards where labelled questions say little: few of them have talk of other days about their
  * words, but what "can wait" is never how it was done; and who asks for a measure wants one.
@@ -60,7 +62,9 @@ export function fitAnswers(asked: AskedLines[], pull = 5, rounds = 150): AnswerW
       w[k]! -= 0.1 * (m[k]! / (1 - 0.9 ** round)) / (Math.sqrt(v[k]! / (1 - 0.99 ** round)) + 1e-8)
     }
   }
-  return Object.fromEntries(ANSWER_FEATURES.map((name, k) => [name, Number((w[k]! / scale[k]!).toFixed(3))])) as unknown as AnswerWeights
+  const fitted = Object.fromEntries(ANSWER_FEATURES.map((name, k) => [name, Number((w[k]! / scale[k]!).toFixed(3))])) as unknown as AnswerWeights
+  // Viewers ask of what is done; what is said of another day never gains by it, whatever a few odd questions teach.
+  return { ...fitted, elsewhen: Math.min(fitted.elsewhen, ELSEWHEN_AT_MOST) }
 }
 
 function addGradient(one: AskedLines, w: Float64Array, scale: Float64Array, gradient: Float64Array): void {

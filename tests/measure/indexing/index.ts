@@ -6,6 +6,7 @@ import { curveThrough, fitBoth, foldsOf, judge, type Judged, tickedSteps, uncali
 import { type LabelledSession, loadSessions } from './load'
 import { longSession } from './longSession'
 import { f1, type Matched, matchFacts, matchTold } from './matching'
+import { answerFigures, crossValidatedAnswers, plainAnswers, tallyAnswers } from './questions'
 import { figuresOf, type Tally, tallyChapters } from './score'
 
 /**
@@ -63,6 +64,12 @@ const alone = (label: string, value: string) => console.log(`${label.padEnd(58)}
 alone('facts, F1', three(f1(facts)))
 alone('told, not shown, F1', three(f1(told)))
 alone('corrections until 95 % of working time is right', (corrections.reduce((sum, n) => sum + n, 0) / corrections.length).toFixed(1))
+
+const plain = answerFigures(sessions.map(session => tallyAnswers(session.truth.questions, plainAnswers(session))))
+const answered = answerFigures(crossValidatedAnswers(sessions).map(({ tally }) => tally))
+const beside = (label: string, of: (figures: typeof plain) => number) => console.log(`${label.padEnd(58)}${three(of(plain)).padStart(10)}${''.padStart(10)}${three(of(answered)).padStart(10)}`)
+beside('first answer right', figures => figures.first)
+beside('one of the first three right', figures => figures.firstThree)
 
 console.log('\nOf stretches said so likely, so much was right (by time; bins of equal time):')
 for (const mode of ['open', 'ticked'] as const) console.log(`  ${mode === 'open' ? 'nothing ticked' : 'steps ticked  '}  ${curveThrough(judged[mode]).slice(1, -1).map(([x, y]) => `${three(x)} → ${three(y)}`).join('   ')}`)
