@@ -3,7 +3,8 @@ import { parseArgs } from 'node:util'
 import { DomainError } from '#shared/utils/errors'
 import { pencilChapters } from '#server/indexing/pencil/pencil'
 import { answersIn, searchableSession } from '#server/indexing/search/sessionCandidates'
-import { fail, print, readPlanFiles } from './planFiles'
+import { readPlanFiles } from './planFiles'
+import { fail, print } from './terminal'
 
 /**
  * Answers questions about a session, one a line on stdin, one JSON line out for each: `npm run --silent ask --

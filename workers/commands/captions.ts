@@ -5,6 +5,7 @@ import { DomainError } from '#shared/utils/errors'
 import { formatClock } from '#shared/utils/timecode'
 import { orderCues } from '#server/indexing/captions/order'
 import { MAX_CAPTION_BYTES, readCaptions } from '#server/indexing/captions/readCaptions'
+import { fail, print } from './terminal'
 
 /**
  * Prints what Ribband reads in a caption file: `npm run --silent captions -- FILE [--json]`.
@@ -63,16 +64,6 @@ function asList(reading: CaptionReading, cues: CaptionReading['cues']): string {
   const { format, encoding } = reading
   const warnings = reading.warnings.map(warning => `! ${warning}`)
   return [`${format === 'vtt' ? 'WebVTT' : 'SubRip'}, ${encoding.toUpperCase()}, ${cues.length} ${cues.length === 1 ? 'caption' : 'captions'}`, ...rows, ...warnings].join('\n')
-}
-
-/** Waits until all is written: exiting earlier would cut a pipe short. */
-function print(text: string): Promise<void> {
-  return new Promise((resolve, reject) => process.stdout.write(`${text}\n`, error => error ? reject(error) : resolve()))
-}
-
-function fail(code: 1 | 2, message: string): never {
-  process.stderr.write(`${message.replace(/\s*\n\s*/g, ' ')}\n`)
-  process.exit(code)
 }
 
 await main()

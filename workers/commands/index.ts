@@ -5,7 +5,8 @@ import { OPERATIONS } from '#shared/types/trade'
 import { DomainError } from '#shared/utils/errors'
 import { pencil } from '#server/indexing/pencil/pencil'
 import type { FixedChapter } from '#server/indexing/pencil/types'
-import { fail, print, readPlanFiles, stepNumbers } from './planFiles'
+import { readPlanFiles, stepNumbers } from './planFiles'
+import { fail, print } from './terminal'
 
 /**
  * Prints what the program makes of a session: `npm run --silent index -- --plan plan.csv --parts parts.csv

@@ -5,17 +5,7 @@ import { readCaptions } from '#server/indexing/captions/readCaptions'
 import type { PlanPart, PlanStep, SpokenClip } from '#server/indexing/pencil/types'
 import { readParts } from '#server/indexing/plan/readParts'
 import { readPlan } from '#server/indexing/plan/readPlan'
-
-/** Writes one line to stderr and ends: 2 for wrong arguments, 1 for files that hold no such thing. */
-export function fail(code: 1 | 2, message: string): never {
-  process.stderr.write(`${message.replace(/\s*\n\s*/g, ' ')}\n`)
-  process.exit(code)
-}
-
-/** Waits until all is written: exiting earlier would cut a pipe short. */
-export function print(text: string): Promise<void> {
-  return new Promise((resolve, reject) => process.stdout.write(`${text}\n`, error => error ? reject(error) : resolve()))
-}
+import { fail } from './terminal'
 
 async function bytesOf(file: string, usage: string): Promise<Uint8Array> {
   try {
