@@ -7,4 +7,6 @@ export default defineConfig({
   testIgnore: [],
   testMatch: /faults\/.*\.spec\.ts/,
   globalSetup: undefined,
+  // What a failed browser test left to be looked at stays.
+  outputDir: 'test-results/faults',
 })

@@ -20,7 +20,19 @@ test.setTimeout(300_000)
 
 const gluing = demoBuild.sessions[0]!.clips.find(clip => clip.chapters.some(chapter => chapter.operation === 'glue'))!
 const glued = gluing.chapters.find(chapter => chapter.operation === 'glue')!
-const cues = readCaptions(readFileSync(gluing.captions)).cues.filter(cue => cue.startMs >= glued.startMs - 500 && cue.endMs <= glued.endMs + 500)
+const spoken = readCaptions(readFileSync(gluing.captions)).cues
+const cues = spoken.filter(cue => cue.startMs >= glued.startMs - 500 && cue.endMs <= glued.endMs + 500)
+
+/** The first words of a caption, as the transcript shows them. */
+const openingOf = (cue: { text: string }) => cue.text.split('\n')[0]!.slice(0, 24)
+
+/** A line of the transcript, which holds only the lines in sight: found by its words. */
+async function lineOf(page: Page, cue: { text: string }): Promise<Locator> {
+  const find = page.getByPlaceholder('Find words').filter({ visible: true })
+  await find.fill(openingOf(cue))
+  await find.press('Enter')
+  return page.locator('[data-cue-text]').filter({ hasText: openingOf(cue) }).first()
+}
 
 /** Four clips of one Saturday, the gluing first: the demo's pictures and words, with bytes of their own. */
 async function fourClips(name: string): Promise<string[]> {
@@ -102,7 +114,7 @@ async function buildUpTo(page: Page, hand: Hand, name: string): Promise<{ build:
     return clips.map(clip => clip.state)
   }, { timeout: 150_000 }).toEqual(['ready', 'ready', 'ready', 'ready'])
   await expect.poll(async () => ((await (await page.request.get(`/api/sessions/${session}`)).json()) as SessionDetail).tracks.every(track => track.read && track.clipId)).toBe(true)
-  await expect(page.getByText(cues[0]!.text.split('\n')[0]!.slice(0, 20)).first()).toBeVisible()
+  await expect(page.locator('[data-cue-text]').filter({ hasText: openingOf(spoken[0]!) }).first()).toBeVisible()
   return { build, session }
 }
 
@@ -175,10 +187,9 @@ test('by mouse, from four clips to the right second', async ({ page, browser, si
   mouse = byMouse()
   const { build, session } = await buildUpTo(page, mouse, 'Odo Mouse')
   await expectAccessible(page)
-  await page.locator('[data-cue-text]').filter({ hasText: cues[0]!.text.split('\n')[0]!.slice(0, 24) }).first().click()
+  await (await lineOf(page, cues[0]!)).click()
   await page.locator('[data-mark=in]').filter({ visible: true }).click()
-  const last = cues.at(-1)!
-  await page.locator('[data-cue-text]').filter({ hasText: last.text.split('\n')[0]!.slice(0, 24) }).first().click()
+  await (await lineOf(page, cues.at(-1)!)).click()
   await page.locator('[data-mark=out]').filter({ visible: true }).click()
   await page.locator('[data-tag]').filter({ visible: true }).click()
   await expectAccessible(page)
