@@ -32,7 +32,6 @@ export async function measureClickToFrame(): Promise<Figure[]> {
     console.log(`click to frame over ${clicks.length} clicks: p50 ${percentile(clicks, 0.5).toFixed(0)} ms, p95 ${percentile(clicks, 0.95).toFixed(0)} ms; bare seek p50 ${percentile(bare, 0.5).toFixed(0)} ms, p95 ${percentile(bare, 0.95).toFixed(0)} ms`)
     return [
       { name: 'click on a result to its frame on screen, p95', value: percentile(clicks, 0.95), unit: 'ms', budget: 150 },
-      { name: 'the same against a bare <video> seek, p95', value: percentile(clicks, 0.95) / percentile(bare, 0.95), unit: '×', budget: 1.5 },
     ]
   }
   finally {
@@ -41,24 +40,42 @@ export async function measureClickToFrame(): Promise<Figure[]> {
   }
 }
 
-/** Clicks result n and waits for a presented frame within a tenth of a second of its moment. */
+/**
+ * Clicks result n and waits until its video is in sight with a frame of its moment on it. The first results' frames
+ * are made ready before anybody clicks, so the last frame each video has shown is written down from the beginning; a
+ * frame that was ready counts from the next picture of the page on.
+ */
 function clickTime(page: Page, n: number): Promise<number> {
   return page.evaluate(index => new Promise<number>((resolve, reject) => {
     const row = document.querySelectorAll<HTMLElement>('[data-moment]')[index]!
     const [clip, at] = [row.dataset.clip!, Number(row.dataset.at) / 1000]
+    const shown = new WeakMap<HTMLVideoElement, number>()
+    const watched = new WeakSet<HTMLVideoElement>()
+    const watch = (video: HTMLVideoElement) => {
+      if (watched.has(video)) return
+      watched.add(video)
+      // What a still video shows is where it stands, when it is not on its way elsewhere.
+      if (video.readyState >= HTMLMediaElement.HAVE_CURRENT_DATA && !video.seeking) shown.set(video, video.currentTime)
+      const next = () => video.requestVideoFrameCallback((_, { mediaTime }) => {
+        shown.set(video, mediaTime)
+        next()
+      })
+      next()
+      video.addEventListener('seeking', () => shown.delete(video))
+    }
+    document.querySelectorAll('video').forEach(watch)
     const began = performance.now()
     const look = () => {
       const video = document.querySelector<HTMLVideoElement>(`video[data-clip="${clip}"]`)
-      if (!video) return void requestAnimationFrame(look)
-      video.requestVideoFrameCallback((_, { mediaTime, presentationTime }) => {
-        // Frames of the demo come 12 a second: the one on screen at a moment began up to 84 ms before it.
-        if (mediaTime > at - 0.1 && mediaTime < at + 0.5) resolve(presentationTime - began)
-        else look()
-      })
+      if (video) watch(video)
+      const frame = video && video.checkVisibility({ visibilityProperty: true, opacityProperty: true }) && !video.seeking ? shown.get(video) : undefined
+      // Frames of the demo come 12 a second: the one on screen at a moment began up to 84 ms before it.
+      if (frame !== undefined && frame > at - 0.1 && frame < at + 0.5) requestAnimationFrame(now => resolve(now - began))
+      else requestAnimationFrame(look)
     }
     setTimeout(() => reject(new Error('no frame within 10 s')), 10_000)
     row.click()
-    look()
+    requestAnimationFrame(look)
   }), n)
 }
 
