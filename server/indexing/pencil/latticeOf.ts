@@ -92,7 +92,7 @@ export function kindFeatures(material: Material, cue: number, kind: number, each
 }
 
 /** How many steps are weighed at a place, when the plan has more; and how far about it evidence is gathered, cues. */
-const ALIVE = 12
+const ALIVE = 10
 const ABOUT = [4, 10, 24]
 
 /** Cue × step: 1 where a step is among the likeliest thereabouts. Keeps long plans and long sessions quick. */

@@ -38,7 +38,7 @@ export interface Material {
 }
 
 /** Longest chapter that is weighed as one, s; a longer one is still found when it is all there is. */
-const LONGEST_S = 180
+const LONGEST_S = 150
 
 /** Where a portion stands in its session, in cues; `ordered` when the day's steps are known, and go down the plan. */
 export interface PlaceInDay { from: number, whole: number, ordered: boolean }
