@@ -1,7 +1,7 @@
 import type { MomentGroup, MomentHit, SearchAnswer } from '#shared/types/search'
 import { OPERATIONS, type Operation } from '#shared/types/trade'
 
-export interface SearchFilters { step: string, part: string, operation: Operation | '', from: string, to: string }
+export interface SearchFilters { session: string, step: string, part: string, operation: Operation | '', from: string, to: string }
 
 /**
  * A search kept in the page's address: the question and its filters, the answer, and further pages of it.
@@ -13,7 +13,7 @@ export async function useSearch(build: () => string | null) {
   const read = (name: string) => String(([] as unknown[]).concat(route.query[name] ?? '')[0] ?? '')
   const question = computed(() => read('q').slice(0, 300))
   const filters = computed<SearchFilters>(() => ({
-    step: read('step'), part: read('part'), operation: OPERATIONS.find(one => one === read('operation')) ?? '', from: read('from'), to: read('to'),
+    session: read('session'), step: read('step'), part: read('part'), operation: OPERATIONS.find(one => one === read('operation')) ?? '', from: read('from'), to: read('to'),
   }))
   const asked = computed(() => question.value !== '' || filters.value.step !== '' || filters.value.part !== '' || filters.value.operation !== '')
   const query = (after?: string) => ({ q: question.value, build: build() ?? undefined, ...filters.value, after })

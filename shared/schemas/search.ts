@@ -9,6 +9,7 @@ const day = z.preprocess(blank, z.iso.date('Write dates as year-month-day, such 
 export const searchSchema = z.object({
   q: z.string().trim().max(300, 'That question is longer than 300 letters. Ask in fewer words.').default(''),
   build: id('build'),
+  session: id('session'),
   step: id('step'),
   part: id('part'),
   operation: z.preprocess(blank, z.enum(OPERATIONS, 'That is not an operation that chapters are tagged with.').optional()),

@@ -13,7 +13,7 @@ const ENOUGH = 20
 /** Passages of one concept beyond which it is too common to be searched for by itself. */
 const MOST_LOOSE = 4_000
 
-export interface Filters { buildId?: string, stepId?: string, partId?: string, operation?: Operation, from?: string, to?: string }
+export interface Filters { buildId?: string, sessionId?: string, stepId?: string, partId?: string, operation?: Operation, from?: string, to?: string }
 /** Who asks: `inkedOnly` on one build, or an account (null: guest) over all builds. */
 export type Seer = { inkedOnly: boolean } | { userId: string | null }
 
@@ -127,13 +127,14 @@ async function findWith(executor: Executor, reading: Reading, filters: Filters, 
   const dated = filters.from || filters.to
     ? sql`and (p.session_id in (select d.id from ${sessions} d where true ${filters.from ? sql`and d.date >= ${filters.from}` : sql``} ${filters.to ? sql`and d.date <= ${filters.to}` : sql``})) is true`
     : sql``
+  const inSession = filters.sessionId ? sql`and p.session_id = ${filters.sessionId}` : sql``
   // Passages are found and counted off by the text index alone; only those few are then joined and checked.
   const { rows } = await executor.execute<Row>(sql`
     select p.id, p.build_id, p.session_id, p.clip_id, p.track_id, p.start_ms, p.end_ms, p.starts, p.lines,
       c.id as chapter_id, c.start_ms as chapter_start, c.end_ms as chapter_end, c.step_id, c.operation, c.inking, c.confidence,
       case when c.id is not null then array(select part_id::text from ${chapterParts} where chapter_id = c.id) end as part_ids,
       case when c.id is not null then p.lexemes::text end as tags
-    from (select * from ${passages} p where p.lexemes @@ ${reading.text}::tsquery and ${maySee(seer)} ${dated} limit ${limit}) p
+    from (select * from ${passages} p where p.lexemes @@ ${reading.text}::tsquery and ${maySee(seer)} ${dated} ${inSession} limit ${limit}) p
     left join ${chapters} c on c.id = p.chapter_id
     where ${stillMaySee(seer)}`)
   return rows.map(row => ({

@@ -35,7 +35,7 @@ export async function search(database: Database, userId: string | null, query: S
     const spelling = await readSpelling(tx, query.q, plan, query.build)
     const question = understand(query.q, plan, spelling)
     const frequencies = await readFrequencies(tx, stemsAsked(question), query.build)
-    const filters: Filters = { buildId: query.build, stepId: query.step, partId: query.part, operation: query.operation, from: query.from, to: query.to }
+    const filters: Filters = { buildId: query.build, sessionId: query.session, stepId: query.step, partId: query.part, operation: query.operation, from: query.from, to: query.to }
 
     const found = question.concepts.length || query.step || query.part || query.operation ? await findCandidates(tx, question, frequencies, filters, seer) : []
     const ranked = thin(spread(rank(question, found, frequencies)))

@@ -97,13 +97,16 @@ describe('a question about one build', () => {
     }
   })
 
-  it('narrows by step, part, operation and day', async () => {
+  it('narrows by step, part, operation, day and session', async () => {
     expect(moments(await ask(builder.id, { q: 'epoxy', build: build.id, step: glueStep.id })).length).toBe(1)
     expect(moments(await ask(builder.id, { q: 'epoxy', build: build.id, step: logStep.id })).length).toBe(0)
     expect(moments(await ask(builder.id, { q: '', build: build.id, part: log.id })).map(moment => moment.chapter!.operation)).toEqual(['shape'])
     expect(moments(await ask(builder.id, { q: 'transom', build: build.id, operation: 'paint' })).length).toBe(0)
     expect(moments(await ask(builder.id, { q: 'epoxy', build: build.id, from: '2026-09-05', to: '2026-09-05' })).length).toBeGreaterThan(0)
     expect(moments(await ask(builder.id, { q: 'epoxy', build: build.id, from: '2026-09-06' })).length).toBe(0)
+    const [one] = moments(await ask(builder.id, { q: 'epoxy', build: build.id }))
+    expect(moments(await ask(builder.id, { q: 'epoxy', build: build.id, session: one!.session!.id })).length).toBeGreaterThan(0)
+    expect(moments(await ask(builder.id, { q: 'epoxy', build: build.id, session: '00000000-0000-4000-8000-000000000000' }))).toEqual([])
   })
 
   it('says what to try when nothing is found', async () => {
