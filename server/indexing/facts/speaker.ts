@@ -10,6 +10,6 @@ export function hearSpeaker(text: string, units: 'inch' | 'mm' | null = null): S
   const inches = imperial === metric ? units !== 'mm' : imperial > metric
   if (/\bfahrenheit\b/i.test(text)) return { inches, fahrenheit: true }
   if (/\b(?:celsius|centigrade)\b/i.test(text)) return { inches, fahrenheit: false }
-  const british = count(text, /\b(?:colour|centre|metre|litre|tyre|grey|mould|mum|lovely|wee|whilst|bloke|reckon|mate|cheers|proper|shed|hoover|bin|tin|rubbish|cuppa|biscuit|holiday|telly|fortnight|spanner|sellotape|bloody|flippin)s?\b/gi)
+  const british = count(text, /\b(?:colour|centre|metre|litre|tyre|grey|mould|mum|lovely|wee|whilst|bloke|reckon|mate|cheers|proper|shed|hoover|bin|tin|rubbish|cuppa|biscuit|holiday|telly|fortnight|spanner|bloody|flippin)s?\b/gi)
   return { inches, fahrenheit: inches && british < 4 }
 }

@@ -58,7 +58,7 @@ rope, line, cord, string, twine, lashing
 cord, string, twine, lashing, sinew, thread
 string, cotton, oakum, caulking, caulk
 skin, layer, veneer, covering, cloth, fabric, canvas, planking
-fabric, cloth, canvas, skin, nylon, polyester, dacron
+fabric, cloth, canvas, skin, nylon, polyester
 cloth, glass, fiberglass, tape, fabric, glass cloth
 support, supports, riser, cleat, bed, beds, bearer, beam, bracket, mount, logs, log, ledger
 supports, beams, beam, cleats, bearers
