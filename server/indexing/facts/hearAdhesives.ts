@@ -1,4 +1,5 @@
-import type { SpokenClip, SpokenCue } from '../pencil/types'
+import type { SpokenClip } from '../pencil/types'
+import { joinCues } from './joinCues'
 import type { SpokenFact } from './types'
 
 const NOUN = String.raw`(?:e?poxy|a poxy|epoxies|resin|glue|adhesive|polyurethane|resorcinol|urea formaldehyde|hide glue|contact cement|sealant|mastic|bedding compound|caulk|goop|seam compound|seam putty|white lead|red lead|pitch|marine glue|pine tar)`
@@ -15,30 +16,18 @@ const NEGATED = /\b(?:not|never|don't|didn't|doesn't|won't|wouldn't|isn't|can't)
  * what is stated is a substance.
  */
 export function hearAdhesives(clip: SpokenClip): SpokenFact[] {
-  let text = ''
-  const starts: { offset: number, cue: SpokenCue }[] = []
-  for (const cue of clip.cues) {
-    const plain = cue.text.replace(/<[^>]*>/g, '').replace(/\s+/g, ' ').trim()
-    if (!plain) continue
-    if (text) text += ' '
-    starts.push({ offset: text.length, cue })
-    text += plain
-  }
+  const { text, startMsAt } = joinCues(clip)
   const facts: SpokenFact[] = []
   for (const match of text.matchAll(STATED)) {
     const words = match[1]!.replace(/^(?:the|an?|our|my|this|just|only|basically)\s+/i, '')
     const offset = match.index + match[0].length - words.length
     if (NEGATED.test(text.slice(0, match.index))) continue
-    let cue = starts[0]!.cue
-    for (const start of starts) {
-      if (start.offset > offset) break
-      cue = start.cue
-    }
+    const atMs = startMsAt(offset)
     // "It's the glue day" names no glue; "it gets epoxy" may be any, "it gets unthickened epoxy" is a choice.
     if (/^(?:glue|resin|adhesive)$/i.test(words) || (/^(?:(?:they |it |that )?gets? |\w+ed )/i.test(match[0]) && /^\w+$/.test(words))) continue
     const key = words.toLowerCase()
-    if (facts.some(fact => fact.text.toLowerCase() === key && cue.startMs - fact.atMs < 600_000)) continue
-    facts.push({ atMs: cue.startMs, kind: 'adhesive', text: words, value: null, unit: null })
+    if (facts.some(fact => fact.text.toLowerCase() === key && atMs - fact.atMs < 600_000)) continue
+    facts.push({ atMs, kind: 'adhesive', text: words, value: null, unit: null })
   }
   return facts
 }

@@ -1,4 +1,5 @@
 import type { SpokenClip } from '../pencil/types'
+import { joinCues } from './joinCues'
 import { readNumber, type SpokenNumber } from './numbers'
 import { hearSpeaker, type Speaker } from './speaker'
 import { type FactToken, factTokens } from './tokens'
@@ -27,7 +28,7 @@ const VAGUE_BEFORE = /^(?:couple|few|several|some|many)$/
 const HEAT = /\b(?:in here|in the (?:shed|shop|garage|barn|workshop|tent|room)|outside|warm|cold|cool|hot|heater|heat|temperature|thermometer|fahrenheit|celsius|centigrade|today|this morning|overnight|above|below freezing|the glue|epoxy|resin|hardener|cure|curing|kettle|steam|oven|weather|it's only|got up to|room|air|roof|pot life|minutes|tonight|sunny|cook|cooks|boil|warmed|warmed up|stove|fire|radiator|sun)\b/
 const ANGLE_WORDS = /\b(?:bevel|angle|rake|flare|slope|plane|cut|set|tilt|gauge|square|miter|mitre|saw|blade|edge|corner|camber|lean|leans|twist|bend|off|lean it|stick|upright|vertical|table)\b/
 
-interface Heard { tokens: FactToken[], text: string, lower: string, cueAt: (offset: number) => { startMs: number, endMs: number }, speaker: Speaker, inches: boolean }
+interface Heard { tokens: FactToken[], text: string, lower: string, startMsAt: (offset: number) => number, speaker: Speaker, inches: boolean }
 
 /**
  * Every length, thickness, angle, slope and mixing ratio, count, screw gauge, waiting time and temperature that is
@@ -55,27 +56,9 @@ export function hearFacts(clip: SpokenClip, options: { units?: 'inch' | 'mm' | n
 }
 
 function join(clip: SpokenClip, options: { units?: 'inch' | 'mm' | null, speaker?: Speaker }): Heard {
-  let text = ''
-  const starts: { offset: number, startMs: number, endMs: number }[] = []
-  for (const cue of clip.cues) {
-    const plain = cue.text.replace(/<[^>]*>/g, '').replace(/\s+/g, ' ').trim()
-    if (!plain) continue
-    if (text) text += ' '
-    starts.push({ offset: text.length, startMs: cue.startMs, endMs: cue.endMs })
-    text += plain
-  }
+  const { text, startMsAt } = joinCues(clip)
   const speaker = options.speaker ?? hearSpeaker(text, options.units ?? null)
-  const cueAt = (offset: number) => {
-    let low = 0
-    let high = starts.length - 1
-    while (low < high) {
-      const middle = (low + high + 1) >> 1
-      if (starts[middle]!.offset <= offset) low = middle
-      else high = middle - 1
-    }
-    return starts[low] ?? { startMs: 0, endMs: 0 }
-  }
-  return { tokens: factTokens(text), text, lower: text.toLowerCase(), cueAt, speaker, inches: speaker.inches }
+  return { tokens: factTokens(text), text, lower: text.toLowerCase(), startMsAt, speaker, inches: speaker.inches }
 }
 
 interface Found { fact?: SpokenFact, second?: SpokenFact, to: number }
@@ -89,7 +72,7 @@ const word = (heard: Heard, at: number) => heard.tokens[at]?.text ?? ''
 function fact(heard: Heard, from: number, to: number, kind: FactKind, value: number, unit: FactUnit): SpokenFact {
   const start = heard.tokens[from]!.start
   const end = heard.tokens[to - 1]!.end
-  return { atMs: heard.cueAt(start).startMs, kind, text: heard.text.slice(start, end), value, unit }
+  return { atMs: heard.startMsAt(start), kind, text: heard.text.slice(start, end), value, unit }
 }
 
 /** To a tenth, halves up: 9.525 mm is 9.5, 1.5875 is 1.6. */

@@ -1,14 +1,13 @@
 import { HEARD } from '../lexicon/heard'
-import { TOPICS } from '../lexicon/topics'
 import { isStopWord, tokenise } from '../words/tokenise'
 import { PhraseBook } from './phrases'
 import type { Speech } from './speech'
 import type { EvidenceWords, PlanPart, PlanStep } from './types'
 import type { Operation } from '#shared/types/trade'
+import { TOPIC_BOOK } from './topicBook'
 
 const MOST = 6
 const operationBooks = new Map<Operation, PhraseBook<number>>()
-const TOPIC_BOOK = new PhraseBook(TOPICS.flatMap((topic, i) => topic.words.map(({ phrase, weight }) => [phrase, { topic: i, weight }] as const)))
 
 function operationBook(operation: Operation): PhraseBook<number> {
   const known = operationBooks.get(operation)

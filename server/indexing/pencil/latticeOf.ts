@@ -93,6 +93,8 @@ export function kindFeatures(material: Material, cue: number, kind: number, each
 
 /** How many steps are weighed at a place, when the plan has more; and how far about it evidence is gathered, cues. */
 const ALIVE = 10
+/** The likeliest of each reach that are weighed; together they are mostly about `ALIVE`. */
+const ALIVE_EACH = 6
 const ABOUT = [4, 10, 24]
 
 /** Cue × step: 1 where a step is among the likeliest thereabouts. Keeps long plans and long sessions quick. */
@@ -109,7 +111,7 @@ function aliveSteps(material: Material, sums: Float64Array): Uint8Array {
       const to = Math.min(n, cue + about + 1) * S
       for (let s = 0; s < S; s++) scores[s] = sums[to + s]! - sums[from + s]!
       order.sort((a, b) => scores[b]! - scores[a]!)
-      for (let at = 0; at < ALIVE - 4; at++) alive[cue * S + order[at]!] = 1
+      for (let at = 0; at < ALIVE_EACH; at++) alive[cue * S + order[at]!] = 1
     }
   }
   return alive

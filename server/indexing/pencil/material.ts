@@ -2,7 +2,7 @@ import { hearKinds, HEARD_COLUMNS } from './kindEvidence'
 import type { Speech } from './speech'
 import { hearSteps, STEP_FEATURES, type StepIndex } from './stepEvidence'
 import { hearTurns, TURN_FEATURES } from './turns'
-import { type Learned, STEPLESS_KINDS, WORK_KINDS } from './types'
+import { type Learned, WORK_KINDS } from './types'
 
 const KS = STEP_FEATURES.length
 const KT = TURN_FEATURES.length
@@ -38,7 +38,7 @@ export interface Material {
 }
 
 /** Longest chapter that is weighed as one, s; a longer one is still found when it is all there is. */
-const LONGEST_S = 150
+export const LONGEST_CHAPTER_S = 150
 
 /** Where a portion stands in its session, in cues; `ordered` when the day's steps are known, and go down the plan. */
 export interface PlaceInDay { from: number, whole: number, ordered: boolean }
@@ -123,6 +123,3 @@ function nodesOf(speech: Speech, turns: Float32Array, fixed: FixedStretch[]): nu
   for (let i = 0; i <= n; i++) if (forced.has(i) || (!inside(i) && scores[i]! >= bar)) nodes.push(i)
   return nodes
 }
-
-export const LONGEST_CHAPTER_S = LONGEST_S
-export const KIND_COUNT = W + STEPLESS_KINDS.length

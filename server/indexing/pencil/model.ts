@@ -13,7 +13,7 @@ export const WEIGHT_NAMES = [
   'opening.words', 'opening.topic', 'opening.heard',
   ...WORK_KINDS.map(kind => `rate.${kind}`),
   'heard.work', 'heard.planTalk', 'heard.cleanUp', 'heard.chatInWork',
-  'none.rate', 'none.chat', 'none.shop', 'none.start', 'none.end', 'none.heard',
+  'none.rate', 'none.chat', 'none.shop', 'none.start', 'none.end',
   'stepless.rate', 'stepless.planTalk', 'stepless.start', 'stepless.shop', 'stepless.cleanUpRate', 'stepless.cleanUp',
   'kind.inTitle', 'kind.inText', 'kind.notInText', 'kind.inTitleRate', 'kind.inTextRate',
   'length.under12', 'length.under25', 'length.log', 'length.logSquared',

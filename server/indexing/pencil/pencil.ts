@@ -1,4 +1,5 @@
 import type { Operation } from '#shared/types/trade'
+import { outside } from '#shared/utils/time/outside'
 import { hearAdhesives } from '../facts/hearAdhesives'
 import { hearFacts } from '../facts/hearFacts'
 import { hearSpeaker } from '../facts/speaker'
@@ -50,7 +51,7 @@ export function pencilChapters(input: PencilInput, fitted: Fitted = FITTED): Pen
   for (const { step } of input.fixed ?? []) if (step !== null && ticked.size) ticked.add(step)
   const known = input.steps.filter(step => ticked.has(step.number))
   const steps = known.length ? known : input.steps
-  if (!speech.cues.length) return silentChapters(input)
+  if (!speech.cues.length) return layOut([], input)
   const fixed = fixedStretches(speech, steps, input.fixed ?? [])
   const { weights, curve } = known.length ? fitted.ticked : fitted.open
   const index = indexSteps(steps, input.parts)
@@ -151,13 +152,7 @@ function layOut(proposals: Proposal[], input: PencilInput): PencilledChapter[] {
     if (!stretched.length && end > 0) stretched.push(empty(at, end))
     const free: PencilledChapter[] = []
     for (const proposal of stretched) {
-      let pieces = [{ startMs: proposal.startMs, endMs: proposal.endMs }]
-      for (const chapter of fixed) {
-        pieces = pieces.flatMap(piece => chapter.endMs <= piece.startMs || chapter.startMs >= piece.endMs
-          ? [piece]
-          : [{ startMs: piece.startMs, endMs: Math.min(piece.endMs, chapter.startMs) }, { startMs: Math.max(piece.startMs, chapter.endMs), endMs: piece.endMs }])
-      }
-      for (const piece of pieces) if (piece.endMs > piece.startMs) free.push({ ...proposal, ...piece, evidence: proposal.evidence.filter(({ atMs }) => atMs >= piece.startMs - 1 && atMs < piece.endMs), fixed: false })
+      for (const piece of outside(proposal, fixed)) free.push({ ...proposal, ...piece, evidence: proposal.evidence.filter(({ atMs }) => atMs >= piece.startMs - 1 && atMs < piece.endMs), fixed: false })
     }
     const kept = fixed.map((chapter): PencilledChapter => {
       const own = mine.find(proposal => proposal.startMs < chapter.endMs && proposal.endMs > chapter.startMs && proposal.step === chapter.step)
@@ -186,10 +181,6 @@ function joinSlivers(chapters: PencilledChapter[]): PencilledChapter[] {
 
 function empty(clip: number, endMs: number): Proposal {
   return { clip, startMs: 0, endMs, step: null, operation: 'none', parts: [], confidence: 0, evidence: [], otherSteps: [], otherOperations: [] }
-}
-
-function silentChapters(input: PencilInput): PencilledChapter[] {
-  return layOut([], input)
 }
 
 /** Chapters, facts and what was told but not shown, each with its step. */

@@ -4,13 +4,13 @@ import { isStopWord, tokenise } from '../words/tokenise'
 import { PhraseBook } from './phrases'
 import type { Speech } from './speech'
 import { type Learned, type PlanPart, type PlanStep, WORK_KINDS } from './types'
+import { TOPIC_BOOK } from './topicBook'
 
 /** How a cue can speak for a step; each is a number for every cue and step. */
 export const STEP_FEATURES = ['title', 'description', 'part', 'material', 'topic', 'operation', 'learned', 'elsewhen', 'place', 'farPlace'] as const
 const K = STEP_FEATURES.length
 const [TITLE, DESCRIPTION, PART, MATERIAL, TOPIC, OPERATION, LEARNED, ELSEWHEN, PLACE, FAR_PLACE] = STEP_FEATURES.map((_, i) => i) as [number, number, number, number, number, number, number, number, number, number]
 
-const TOPIC_BOOK = new PhraseBook(TOPICS.flatMap((topic, i) => topic.words.map(({ phrase, weight }) => [phrase, { topic: i, weight }] as const)))
 const OPERATION_BOOK = new PhraseBook(WORK_KINDS.flatMap((kind, i) => HEARD[kind].map(({ phrase, weight }) => [phrase, { kind: i, weight }] as const)))
 
 /** What the plan says of each step, ready to be held against speech. */

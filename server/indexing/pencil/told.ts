@@ -22,7 +22,7 @@ const OUTRIGHT = [
 ]
 
 /** Work of another time, told as done. */
-const DONE = String.raw`(?:made|cut|glued|did|done|sanded|fitted|fit|drilled|screwed|nailed|riveted|bent|planed|painted|primed|varnished|sealed|coated|scarfed|laminated|bored|shaped|bevelled|beveled|marked|finished|filleted|taped|glassed|bonded|milled|ripped|sawn|sawed|pulled|lashed|pegged|sewed|stitched|set|hung|built|put|ran|run|turned|flipped|cleaned|scraped|faired|roughed|carved|steamed|oiled|mixed|poured|got|took|went ahead|knocked|chopped|traced|lofted|wired|crimped|soldered|mounted|clamped|dry fitted|stripped|caulked|bedded|plugged|bunged|epoxied|rolled|brushed|tacked|fastened|bolted|measured|squared|laid|offered|hauled|dragged|swept|fetched|dug|let|left|brought|picked|worked|went|trimmed|rounded|carried|pinned|closed|sewn|soldered|hemmed|wound|wrapped|tied|moved|routed|cast|filled|soaked|assembled)`
+const DONE = String.raw`(?:made|cut|glued|did|done|sanded|fitted|fit|drilled|screwed|nailed|riveted|bent|planed|painted|primed|varnished|sealed|coated|scarfed|laminated|bored|shaped|bevelled|beveled|marked|finished|filleted|taped|glassed|bonded|milled|ripped|sawn|sawed|pulled|lashed|pegged|sewed|stitched|set|hung|built|put|ran|run|turned|flipped|cleaned|scraped|faired|roughed|carved|steamed|oiled|mixed|poured|got|took|went ahead|knocked|chopped|traced|lofted|wired|crimped|soldered|mounted|clamped|dry fitted|stripped|caulked|bedded|plugged|bunged|epoxied|rolled|brushed|tacked|fastened|bolted|measured|squared|laid|offered|hauled|dragged|swept|fetched|dug|let|left|brought|picked|worked|went|trimmed|rounded|carried|pinned|closed|sewn|hemmed|wound|wrapped|tied|moved|routed|cast|filled|soaked|assembled)`
 const WHEN = String.raw`(?:last night|last (?:week|weekend|month|winter|autumn|summer|spring|thursday|friday|saturday|sunday|monday|tuesday|wednesday)|at the weekend|all week|the night before|yesterday|(?:on )?(?:monday|tuesday|wednesday|thursday|friday|saturday|sunday)(?: (?:night|morning|evening|afternoon))?|(?:in|over|during) the (?:week|evenings?|weekend|winter|holidays?)|(?:earlier|one night|one evening|midweek|the other (?:day|night|evening))|this morning|before (?:breakfast|work|supper|dinner|you (?:came|got)|i (?:started|turned)|lunch)|after (?:work|supper|dinner|tea|hours|you|school)|on my own|while (?:that|the|it|you|i|we|waiting)\b[^.]{0,40}|at lunch(?:time)?|in the meantime|since (?:last|then|you|we)[^.]{0,20}|between (?:then|times)|in (?:january|february|march|april|may|june|july|august|september|october|november|december)|(?:a |the )?(?:couple|few|two|three|four|month|week|day|year)(?: (?:of|or so|or two))?(?: (?:days|nights|weeks|evenings|months))? (?:ago|back)|a while (?:ago|back)|over the (?:holidays?|weekend|winter|break)|at noon|the (?:day|week) before|earlier (?:in the week|today|on|this week)|same (?:time|day|way)|over (?:lunch|supper)|by lamplight|after dark)`
 const TOLD = [
   new RegExp(String.raw`\b(?:i|we|i've|we've|i'd|we'd|he|she|they|i just|that|it|was|were|me and \w+|\w+ and (?:i|me))\s+(?:\w+\s+){0,3}?${DONE}\b[^.?!]{0,70}?\b${WHEN}`),
@@ -40,7 +40,10 @@ const TOLD = [
   /\b(?:other|port|starboard|second|rest of the|remaining|last|first) (?:\w+ ){0,2}?(?:i did|we did|got done|was done|were done|is done|are done|went on|went in|has been done)\b[^.?!]{0,40}?\b(?:the same(?: way)?|already|earlier|yesterday|last night|while|before|on my own|myself|same)\b/,
 ]
 /** What was filmed and shown before is not missing. */
-const SHOWN = /\bthank you to me\b|\byou were (?:there|here|with me)\b|\byou (?:saw|watched|were (?:here|there)|remember|will have seen|'?ve seen|have seen)\b|\bas you saw\b|\blast (?:episode|video)\b|\bin the last (?:one|video|episode)\b/
+const SHOWN = /\byou (?:saw|watched|were (?:here|there)|remember|will have seen|'?ve seen|have seen)\b|\bas you saw\b|\blast (?:episode|video)\b|\bin the last (?:one|video|episode)\b/
+
+/** The same, said in the next cue. */
+const WERE_THERE = /\byou were (?:there|here|with me)\b|\bthank you to me\b/
 
 const NEAR_MS = 14_000
 
@@ -61,7 +64,7 @@ export function hearTold(clips: readonly SpokenClip[]): ToldPlace[] {
       else if (cues[i + 2] && cues[i + 2]!.startMs - cues[i + 1]!.endMs > 4000) texts.splice(2)
       const text = texts.join(' ')
       const within = (match: RegExpExecArray | null) => match !== null && match.index < cue.plain.length
-      const shown = SHOWN.test(cue.plain) || /\byou were (?:there|here|with me)\b|\bthank you to me\b/.test(texts.slice(0, 2).join(' '))
+      const shown = SHOWN.test(cue.plain) || WERE_THERE.test(texts.slice(0, 2).join(' '))
       const outright = OUTRIGHT.some(pattern => within(pattern.exec(text)))
       const told = !shown && TOLD.some(pattern => within(pattern.exec(text)))
       if (!outright && !told) return

@@ -1,3 +1,5 @@
+import { outside } from '#shared/utils/time/outside'
+
 /**
  * How the program's newest proposals take the place of its earlier ones: which stand, which change, which are new and
  * which go. Pure. Rows keep their ids where they can, so that a chapter somebody is looking at stays the same chapter.
@@ -36,13 +38,7 @@ export function matchStretches<Old extends Stretch, New extends Stretch>(earlier
 /** What is left of proposals beside `walls`; pieces shorter than `shortestMs` are left out. */
 export function besideWalls<Proposal extends Stretch>(proposals: readonly Proposal[], walls: readonly Stretch[], shortestMs: number): Proposal[] {
   return proposals.flatMap((proposal) => {
-    let pieces = [{ startMs: proposal.startMs, endMs: proposal.endMs }]
-    for (const wall of walls) {
-      if (wall.clipId !== proposal.clipId) continue
-      pieces = pieces.flatMap(({ startMs, endMs }) => wall.endMs <= startMs || wall.startMs >= endMs
-        ? [{ startMs, endMs }]
-        : [{ startMs, endMs: Math.min(endMs, wall.startMs) }, { startMs: Math.max(startMs, wall.endMs), endMs }])
-    }
+    const pieces = outside(proposal, walls.filter(wall => wall.clipId === proposal.clipId))
     return pieces.filter(piece => piece.endMs - piece.startMs >= shortestMs).map(piece => ({ ...proposal, ...piece }))
   })
 }

@@ -1,9 +1,8 @@
 import { EVERYDAY_SETS } from '../lexicon/everyday'
-import { TOPICS } from '../lexicon/topics'
 import { PhraseBook } from '../pencil/phrases'
+import { TOPIC_BOOK } from '../pencil/topicBook'
 
 const MEANINGS = new PhraseBook(EVERYDAY_SETS.flatMap((set, meaning) => set.map(phrase => [phrase, meaning] as const)))
-const TOPIC_BOOK = new PhraseBook(TOPICS.flatMap((topic, i) => topic.words.map(({ phrase, weight }) => [phrase, { topic: i, weight }] as const)))
 
 /** A word or phrase of a question and the meanings it may have (numbers of sets of `everyday.ts`). */
 export interface Meant { stems: string[], meanings: number[] }
