@@ -4,6 +4,7 @@ import { hearAdhesives } from '../facts/hearAdhesives'
 import { hearFacts } from '../facts/hearFacts'
 import { hearSpeaker } from '../facts/speaker'
 import type { SpokenFact } from '../facts/types'
+import { stepsSpokenOf } from './aboutSteps'
 import { confidenceOf, type Curve } from './calibration'
 import { evidenceOf, partBook, partsIn } from './evidence'
 import { KINDS, W } from './lattice'
@@ -12,7 +13,7 @@ import { decode, type Decoded, type Marginals, marginalsOf } from './marginals'
 import { type FixedStretch, gather, type Material } from './material'
 import { narrow, portionsOf, takePortion } from './portions'
 import { listen, type Speech } from './speech'
-import { indexSteps, STEP_FEATURES } from './stepEvidence'
+import { indexSteps, type StepIndex } from './stepEvidence'
 import { hearTold } from './told'
 import { type FixedChapter, type Learned, type PencilledChapter, type PlanPart, type PlanStep, type SpokenClip, STEPLESS_KINDS, WORK_KINDS } from './types'
 import type { Weights } from './model'
@@ -195,27 +196,24 @@ export function pencil(input: PencilInput, fitted: Fitted = FITTED): Pencilled {
       return chapter?.operation === 'none' && chapter.confidence >= 0.5 ? [] : [{ clip: clipAt, ...fact, step: chapter?.step ?? null }]
     })
     .sort((a, b) => a.atMs - b.atMs))
-  const toldNotShown = hearTold(input.clips).map(place => ({ ...place, step: stepTold(place, chapters, input) }))
+  // What is told may be of any step, ticked or not.
+  const index = indexSteps(input.steps, input.parts)
+  const toldNotShown = hearTold(input.clips).map(place => ({ ...place, step: stepTold(place, chapters, index) }))
   return { chapters, toldNotShown, facts }
 }
 
 /** The step that the words of a told place speak of, else the step they are spoken over. */
-function stepTold(place: { clip: number, atMs: number, words: string }, chapters: PencilledChapter[], input: PencilInput): number | null {
+function stepTold(place: { clip: number, atMs: number, words: string }, chapters: PencilledChapter[], index: StepIndex): number | null {
   const over = chapters.find(chapter => chapter.clip === place.clip && place.atMs >= chapter.startMs && place.atMs < chapter.endMs)
-  const guess = likeliestStep(place.words, input.steps, input.parts)
+  const guess = likeliestStep(place.words, index)
   if (guess && (guess.lead > 1.5 || !over || over.step === null)) return guess.step
   return over?.step ?? guess?.step ?? null
 }
 
 /** The step of the plan that a sentence is most about, and how far ahead of the next it is; null when it speaks of none. */
-export function likeliestStep(words: string, steps: PlanStep[], parts: readonly PlanPart[]): { step: number, lead: number } | null {
-  const speech = listen([{ cues: [{ startMs: 0, endMs: 1, text: words }] }])
-  if (!speech.cues.length || !steps.length) return null
-  const material = gather(speech, indexSteps(steps, parts))
-  const scores = steps.map((step, s) => {
-    const row = material.steps.subarray(s * STEP_FEATURES.length, (s + 1) * STEP_FEATURES.length)
-    return { step: step.number, score: 1.2 * row[0]! + row[1]! + 1.2 * row[2]! + 0.3 * row[3]! + 0.6 * row[4]! + 0.5 * row[5]! }
-  }).sort((a, b) => b.score - a.score)
+export function likeliestStep(words: string, index: StepIndex): { step: number, lead: number } | null {
+  const spoken = stepsSpokenOf(words, index)
+  const scores = index.steps.map((step, s) => ({ step: step.number, score: spoken[s]! })).sort((a, b) => b.score - a.score)
   const [first, second] = scores
   if (!first || first.score <= 0.5) return null
   return { step: first.step, lead: first.score - (second?.score ?? 0) }

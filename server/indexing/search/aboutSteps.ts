@@ -1,15 +1,10 @@
-import { gather } from '../pencil/material'
-import { listen } from '../pencil/speech'
-import { indexSteps, STEP_FEATURES, type StepIndex } from '../pencil/stepEvidence'
+import { stepsSpokenOf } from '../pencil/aboutSteps'
+import { indexSteps, type StepIndex } from '../pencil/stepEvidence'
 import type { SearchPlan } from './types'
 
-const K = STEP_FEATURES.length
 /** Evidence below which a question is about no step, and from which the likeliest counts in full. */
 const LITTLE = 0.3
 const ENOUGH = 2
-/** What a word of a step's title, description, part, material, topic and operation is worth when a question says it. */
-const WORTH = [1.2, 1, 1.2, 0.3, 0.6, 0.5, 0, 0]
-
 const indexes = new WeakMap<SearchPlan, StepIndex>()
 
 /** A plan is read once for all the questions put to it. */
@@ -30,10 +25,7 @@ function indexOf(plan: SearchPlan): StepIndex {
  */
 export function aboutSteps(question: string, plan: SearchPlan): Map<string, number> {
   if (!plan.steps.length) return new Map()
-  const speech = listen([{ cues: [{ startMs: 0, endMs: 1, text: question }] }])
-  if (!speech.cues.length) return new Map()
-  const { steps } = gather(speech, indexOf(plan))
-  const scores = plan.steps.map((_, s) => WORTH.reduce((sum, worth, k) => sum + worth * steps[s * K + k]!, 0))
+  const scores = stepsSpokenOf(question, indexOf(plan))
   const most = Math.max(...scores)
   if (most <= LITTLE) return new Map()
   return new Map(plan.steps.map((step, s) => [step.id, scores[s]! / Math.max(most, ENOUGH)]))

@@ -1,5 +1,6 @@
 import fc from 'fast-check'
 import { describe, expect, it, vi } from 'vitest'
+import { indexSteps } from '#server/indexing/pencil/stepEvidence'
 import { likeliestStep, type PencilInput, pencil as pencilWith, pencilChapters as chaptersWith } from '#server/indexing/pencil/pencil'
 import type { FixedChapter, PencilledChapter } from '#server/indexing/pencil/types'
 import { clipOf, PARTS, PLAIN, STEPS, TALK, talk } from './support'
@@ -182,12 +183,12 @@ describe('facts and told places', () => {
 
 describe('likeliestStep', () => {
   it('names the step that a sentence is about, and by how much', () => {
-    expect(likeliestStep('three coats of varnish on the outwale', STEPS, PARTS)).toMatchObject({ step: 4 })
-    expect(likeliestStep('three coats of varnish on the outwale', STEPS, PARTS)!.lead).toBeGreaterThan(1)
+    expect(likeliestStep('three coats of varnish on the outwale', indexSteps(STEPS, PARTS))).toMatchObject({ step: 4 })
+    expect(likeliestStep('three coats of varnish on the outwale', indexSteps(STEPS, PARTS))!.lead).toBeGreaterThan(1)
   })
   it('names none for a sentence about nothing, none at all, or no plan', () => {
-    for (const words of ['', 'and then there it was', '[Music]']) expect(likeliestStep(words, STEPS, PARTS)).toBeNull()
-    expect(likeliestStep('varnish', [], [])).toBeNull()
+    for (const words of ['', 'and then there it was', '[Music]']) expect(likeliestStep(words, indexSteps(STEPS, PARTS))).toBeNull()
+    expect(likeliestStep('varnish', indexSteps([], []))).toBeNull()
   })
 })
 
