@@ -1,6 +1,6 @@
 import type { Fitted } from './pencil'
 
-/** Written by `npm run fit:indexing` (19 sessions); not by hand. */
+/** Fitted on 19 sessions in stages (DEVELOPERS.md, Decisions), not by hand; `npm run fit:indexing` fits them anew. */
 export const FITTED: Fitted = {
   open: {
     weights: {

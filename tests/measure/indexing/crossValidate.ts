@@ -4,7 +4,7 @@ import { type Fitted, pencilChapters } from '#server/indexing/pencil/pencil'
 import { fit, lessonOf } from './fit'
 import type { LabelledSession } from './load'
 
-/** Enough for the likelihood of held-out sessions to stop rising; a fit of 40 small steps left a tenth of the figures on the bench. */
+/** Enough for the likelihood to stop rising from where fitting starts. */
 export const ROUNDS = 40
 export const HOLD = 0.005
 /** Where fitting starts: what anybody would expect, so that fewer rounds are needed. */
